@@ -1,0 +1,1 @@
+"""The model of air cylinders and plant air, and the doors into it."""

@@ -1,0 +1,1 @@
+"""Air: ideal gas, humidity, reference states, polytropic work, exergy."""

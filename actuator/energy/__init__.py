@@ -1,0 +1,1 @@
+"""Energy: air per cycle, ideal indicator diagram, compressor, money, carbon."""

@@ -1,0 +1,1 @@
+"""Flow: ISO 6358 elements, and elements in series."""

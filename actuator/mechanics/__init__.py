@@ -1,0 +1,1 @@
+"""Mechanics: force, friction, buckling."""

@@ -1,0 +1,1 @@
+"""Views of an answer: figures, text, JSON, CSV, workings."""

@@ -1,0 +1,1 @@
+"""Stroke dynamics: equations, integrator, the periodic cycle, its ledger."""

@@ -1,0 +1,1 @@
+"""Invented demo plant: data only."""

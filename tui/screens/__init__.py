@@ -1,0 +1,1 @@
+"""Screens and workspaces of the terminal UI."""

@@ -1,0 +1,1 @@
+"""Widgets: sheet fields, plots, bars."""
