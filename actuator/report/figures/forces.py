@@ -1,0 +1,284 @@
+"""Figures without motion: static forces, the rod as a column, the ideal indicator diagram."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Any
+
+from actuator.errors import Refusal
+from actuator.kinds import (
+    AirMass,
+    Energy,
+    Force,
+    Kind,
+    Length,
+    Number,
+    PressureDifference,
+    Share,
+    SpecificEnergy,
+)
+from actuator.report.figures.cycle import RATIO
+from actuator.report.figures.registry import At, Direction, Figure, kind
+
+_PRESSURES = ("machine.supply_pressure", "site.ambient_pressure")
+_SIZES = ("bore", "rod")
+
+
+def _read(section: str, name: str) -> Callable[[At], float | Refusal]:
+    def get(at: At) -> float | Refusal:
+        found: float | Refusal = getattr(getattr(at.actuator, section), name)
+        return found
+
+    return get
+
+
+def _static(
+    name: str,
+    alias: Any,
+    label: str,
+    formula: str,
+    *,
+    inputs: tuple[str, ...] = (),
+    uses: tuple[str, ...] = (),
+    direction: Direction = "",
+    sources: tuple[str, ...] = ("own",),
+    note: str = "",
+) -> Figure:
+    return Figure(
+        level="actuator",
+        key=f"static.{name}",
+        kind=alias if isinstance(alias, Kind) else kind(alias),
+        label=label,
+        group="Static force",
+        formula=formula,
+        sources=sources,
+        inputs=inputs,
+        uses=uses,
+        get=_read("static", name),
+        direction=direction,
+        note=note,
+    )
+
+
+_LOAD_NOTE = "At its worst position; without inertia and without the cylinder's own friction."
+_RATIO_NOTE = "Common practice keeps it below about 0.7, below 0.5 where the motion has to be fast and even."
+
+STATIC: tuple[Figure, ...] = (
+    _static(
+        "theoretical_extend",
+        Force,
+        "Theoretical force",
+        "F = (p_s − p₀)·π/4·D²",
+        inputs=("bore", *_PRESSURES),
+        direction="extend",
+    ),
+    _static(
+        "theoretical_retract",
+        Force,
+        "Theoretical force",
+        "F = (p_r − p₀)·π/4·(D² − d²),  p_r = return pressure, else p_s",
+        inputs=(*_SIZES, "return_pressure", *_PRESSURES),
+        direction="retract",
+    ),
+    _static(
+        "load_extend",
+        Force,
+        "Opposing load",
+        "max over x of M·g·sin α + μ·M·g·cos α + F_ext + F_process(x) − F_const",
+        inputs=("load",),
+        direction="extend",
+        note=_LOAD_NOTE,
+    ),
+    _static(
+        "load_retract",
+        Force,
+        "Opposing load",
+        "−M·g·sin α + μ·M·g·cos α + F_ret + F_const",
+        inputs=("load",),
+        direction="retract",
+        note=_LOAD_NOTE,
+    ),
+    *(
+        _static(
+            f"load_ratio_{direction}",
+            RATIO,
+            "Load ratio",
+            "opposing load/theoretical force",
+            uses=(f"static.load_{direction}", f"static.theoretical_{direction}"),
+            direction=direction,
+            sources=("own", "practice"),
+            note=_RATIO_NOTE,
+        )
+        for direction in ("extend", "retract")
+    ),
+    *(
+        _static(
+            f"force_reserve_{direction}",
+            RATIO,
+            "Force reserve",
+            "(theoretical force − F_c − opposing load)/opposing load",
+            inputs=("friction.coulomb",),
+            uses=(f"static.load_{direction}", f"static.theoretical_{direction}"),
+            direction=direction,
+            note="At the load's worst position; refused where nothing opposes the motion.",
+        )
+        for direction in ("extend", "retract")
+    ),
+    _static(
+        "required_bore",
+        Length,
+        "Required bore",
+        "D = √(4·[F_load·(1 + reserve) + F_c]/(π·(p − p₀)·a)),  a = 1 extending, 1 − (d/D)² retracting; "
+        "the larger of both",
+        inputs=(
+            *_SIZES,
+            "return_pressure",
+            "friction.coulomb",
+            "load",
+            "require.force_reserve",
+            *_PRESSURES,
+        ),
+        uses=("static.load_extend", "static.load_retract"),
+        note="Closed form, rod in proportion to the bore.",
+    ),
+)
+
+
+def _rod(name: str, alias: Any, label: str, formula: str, *, inputs: tuple[str, ...], **more: Any) -> Figure:
+    return Figure(
+        level="actuator",
+        key=f"rod.{name}",
+        kind=kind(alias),
+        label=label,
+        group="Rod",
+        formula=formula,
+        sources=("own", "practice"),
+        inputs=inputs,
+        get=_read("rod", name),
+        **more,
+    )
+
+
+_COLUMN = ("rod", "stroke", "mounting", "rod_end", "closed_length")
+_COLUMN_FORMULA = (
+    "Euler, λ ≥ λ_t: F = π²·E·I/(K·L)²,  Johnson below: F = A·σ_y·[1 − σ_y·λ²/(4·π²·E)]\n"
+    "L = closed length + S,  I = π·d⁴/64,  λ_t = π·√(2·E/σ_y),  E = 210 GPa,  σ_y = 355 MPa"
+)
+
+ROD: tuple[Figure, ...] = (
+    _rod("buckling_load", Force, "Buckling load", _COLUMN_FORMULA, inputs=_COLUMN),
+    _rod(
+        "buckling_safety",
+        Number,
+        "Buckling safety",
+        "buckling load/largest push,  largest push = max((p_s − p₀)·A₁, static push of the load)",
+        inputs=("bore", "load", *_PRESSURES),
+        uses=("rod.buckling_load",),
+        note="Common practice asks for 3.5 to 5.",
+    ),
+    _rod(
+        "slenderness",
+        Number,
+        "Slenderness",
+        "λ = K·L/(d/4),  K by mounting and rod end",
+        inputs=_COLUMN,
+    ),
+    _rod(
+        "longest_stroke",
+        Length,
+        "Longest stroke",
+        "S at which buckling load = wanted safety × largest push, from the same two formulas",
+        inputs=(*_COLUMN, "bore", "load", "require.buckling_safety", *_PRESSURES),
+        note="With a wanted safety of 4 where none is asked (common practice, no source).",
+    ),
+)
+
+_DIAGRAM = (
+    "bore",
+    "stroke",
+    "dead_volume_cap",
+    "cut_off",
+    "machine.supply_pressure",
+    "machine.supply_temperature",
+    "site.ambient_pressure",
+)
+
+
+def _indicator(
+    name: str,
+    alias: Any,
+    label: str,
+    formula: str,
+    *,
+    inputs: tuple[str, ...] = _DIAGRAM,
+    uses: tuple[str, ...] = (),
+    note: str = "",
+) -> Figure:
+    return Figure(
+        level="actuator",
+        key=f"indicator.{name}",
+        kind=kind(alias),
+        label=label,
+        group="Ideal indicator diagram, extending",
+        formula=formula,
+        sources=("own",),
+        inputs=inputs,
+        uses=uses,
+        get=_read("indicator", name),
+        note=note,
+    )
+
+
+INDICATOR: tuple[Figure, ...] = (
+    _indicator(
+        "cut_off", Share, "Cut-off", "ε = share of the stroke with the supply open", inputs=("cut_off",)
+    ),
+    _indicator(
+        "work",
+        Energy,
+        "Work per stroke",
+        "W = p_s·ε·V_s + p_s·V₁·L·exprel((1−n)·L) − p_b·(1−κ)·V_s + W_recompression,  L = ln(V₂/V₁)\n"
+        "V₁ = (c + ε)·V_s,  V₂ = (c + 1)·V_s,  V₃ = (c + κ)·V_s,  exprel(z) = (eᶻ − 1)/z",
+        note="Admission, polytropic expansion, release, exhaust and recompression; out and back.",
+    ),
+    _indicator(
+        "mean_effective_pressure",
+        PressureDifference,
+        "Mean effective pressure",
+        "W/V_s",
+        inputs=("bore", "stroke"),
+        uses=("indicator.work",),
+    ),
+    _indicator(
+        "air",
+        AirMass,
+        "Air, isothermal",
+        "m = (p_s·V₁ − p_c·c·V_s)/(R·T_s)",
+        note="Admission at the supply's temperature; the adiabatic figure is the other bound.",
+    ),
+    _indicator(
+        "air_adiabatic",
+        AirMass,
+        "Air, adiabatic",
+        "m = [p_s·V₁ − p_c·c·V_s + (γ − 1)·p_s·ε·V_s]/(γ·R·T_s)",
+    ),
+    _indicator(
+        "work_per_kg",
+        SpecificEnergy,
+        "Work per mass of air",
+        "W/m, isothermal admission",
+        inputs=(),
+        uses=("indicator.work", "indicator.air"),
+    ),
+    _indicator(
+        "unused_share",
+        Share,
+        "Unused by full pressure",
+        "1 − (p − p₀)/(p·ln(p/p₀)),  p = p_s",
+        inputs=_PRESSURES,
+        note="Share of the supplied exergy that a stroke at full pressure to the end leaves unused: "
+        "isothermal, no friction, no dead volume.",
+    ),
+)
+
+FIGURES: tuple[Figure, ...] = STATIC + ROD + INDICATOR

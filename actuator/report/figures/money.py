@@ -1,0 +1,246 @@
+"""Figures above the actuator: demand of a machine, the way from the meter to the air, money and carbon."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Any
+
+from actuator.analysis import AirCost
+from actuator.errors import Refusal
+from actuator.kinds import (
+    CarbonYear,
+    Energy,
+    FlowANR,
+    Kind,
+    MoneyYear,
+    PriceAir,
+    SpecificEnergy,
+    VolumeANR,
+    YearlyEnergy,
+)
+from actuator.report.figures.cycle import RATIO, share_of
+from actuator.report.figures.registry import At, Figure, Level, kind
+
+ENERGY_PER_ANR = Kind(dimension="energy_per_volume", unit="J/m**3", suffix="_J_m3")
+"""Electricity per volume of air, ANR. [J/m³]"""
+
+_COMPRESSOR = ("plant.compressor.1", "site")
+_COSTS: tuple[tuple[str, Any, str], ...] = (
+    ("energy_year", YearlyEnergy, "Electricity a year"),
+    ("cost_year", MoneyYear, "Cost a year"),
+    ("carbon_year", CarbonYear, "Carbon a year"),
+)
+_COST_FORMULA: dict[Level, dict[str, str]] = {
+    "actuator": {
+        "energy_year": "air per cycle × cycles a year × electricity per mass of air\n"
+        "cycles a year = hours × utilisation/cycle time",
+        "cost_year": "electricity a year × energy price",
+        "carbon_year": "electricity a year × carbon intensity",
+    },
+    "machine": dict.fromkeys(
+        ("energy_year", "cost_year", "carbon_year"), "sum over its actuators × quantity"
+    ),
+    "project": {name: "sum over the machines" for name, _, _ in _COSTS},
+}
+_RATES = {"cost_year": ("money.energy",), "carbon_year": ("money.carbon",)}
+_NOTES: dict[Level, str] = {
+    "actuator": "Of one actuator in one machine.",
+    "machine": "Of all machines of this kind.",
+    "project": "",
+}
+
+
+def _cost(name: str) -> Callable[[At], float | Refusal]:
+    def get(at: At) -> float | Refusal:
+        cost: AirCost | Refusal
+        if at.level == "project":
+            cost = at.analysis.cost
+        else:
+            cost = at.machine.cost if at.level == "machine" else at.actuator.cost
+        if isinstance(cost, Refusal):
+            return cost
+        found: float = getattr(cost, name)
+        return found
+
+    return get
+
+
+def _cost_figure(level: Level, name: str, alias: Any, label: str) -> Figure:
+    uses: tuple[str, ...] = ()
+    inputs: tuple[str, ...] = ()
+    if level == "actuator":
+        inputs = _RATES.get(name, ("machine.hours", "machine.utilisation", "machine.cycle_time"))
+        if name == "energy_year":
+            uses = ("cycle.air_drawn", "project.supply.specific_energy")
+        else:
+            uses = ("money.energy_year",)
+    elif level == "machine":
+        inputs = ("machine.quantity",)
+        uses = (f"actuators.money.{name}",)
+    else:
+        uses = (f"machines.money.{name}",)
+    return Figure(
+        level=level,
+        key=f"money.{name}",
+        kind=kind(alias),
+        label=label,
+        group="Money and carbon",
+        formula=_COST_FORMULA[level][name],
+        sources=("own",),
+        inputs=inputs,
+        uses=uses,
+        get=_cost(name),
+        note=_NOTES[level],
+    )
+
+
+def _costs(level: Level) -> tuple[Figure, ...]:
+    return tuple(_cost_figure(level, *row) for row in _COSTS)
+
+
+def _demand(name: str, alias: Any, label: str, formula: str, *, note: str = "") -> Figure:
+    def get(at: At) -> float | Refusal:
+        found: float | Refusal = getattr(at.machine.demand, name + "_anr")
+        return found
+
+    return Figure(
+        level="machine",
+        key=f"demand.{name}",
+        kind=kind(alias),
+        label=label,
+        group="Air demand",
+        formula=formula,
+        sources=("own", "iso8778"),
+        inputs=("machine.cycle_time",),
+        uses=("actuators.cycle.air_drawn_anr",),
+        get=get,
+        note=note,
+    )
+
+
+def _supply(name: str, key: str, alias: Any, label: str, formula: str, **more: Any) -> Figure:
+    def get(at: At) -> float | Refusal:
+        found: float = getattr(at.analysis.supply, name)
+        return found
+
+    return Figure(
+        level="project",
+        key=key,
+        kind=alias if isinstance(alias, Kind) else kind(alias),
+        label=label,
+        group="Compressed air",
+        formula=formula,
+        sources=("own", "practice"),
+        get=get,
+        **more,
+    )
+
+
+def _upstream(name: str) -> Callable[[At], float | Refusal]:
+    def get(at: At) -> float | Refusal:
+        air = at.actuator.air
+        if isinstance(air, Refusal):
+            return air
+        rate: float = getattr(at.analysis.supply, name)
+        return air.air_drawn * rate
+
+    return get
+
+
+def _supplied(at: At) -> float | Refusal:
+    stroke = at.actuator.stroke
+    if isinstance(stroke, Refusal):
+        return stroke
+    return stroke.ledger if isinstance(stroke.ledger, Refusal) else stroke.ledger.supplied
+
+
+UPSTREAM: tuple[Figure, ...] = (
+    Figure(
+        level="actuator",
+        key="cycle.upstream.electricity",
+        kind=kind(Energy),
+        label="Electricity at the meter",
+        group="From the meter to the port",
+        formula="air drawn × electricity per mass of air",
+        sources=("own",),
+        uses=("cycle.air_drawn", "project.supply.specific_energy"),
+        get=_upstream("specific_energy"),
+        grouped=True,
+    ),
+    Figure(
+        level="actuator",
+        key="cycle.upstream.compression",
+        kind=kind(Energy),
+        label="Work on the air",
+        group="From the meter to the port",
+        formula="air drawn × work of compression per mass of air",
+        sources=("own",),
+        uses=("cycle.air_drawn", "project.supply.specific_work"),
+        get=_upstream("specific_work"),
+        grouped=True,
+    ),
+    Figure(
+        level="actuator",
+        key="cycle.port_share",
+        kind=RATIO,
+        label="Exergy at the port, share",
+        group="From the meter to the port",
+        formula="supplied at the port/electricity at the meter",
+        sources=("own",),
+        uses=("cycle.exergy.supplied", "cycle.upstream.electricity"),
+        get=share_of(_supplied, _upstream("specific_energy")),
+    ),
+)
+
+ACTUATOR: tuple[Figure, ...] = UPSTREAM + _costs("actuator")
+MACHINE: tuple[Figure, ...] = (
+    _demand("mean", FlowANR, "Mean", "Σ air of a cycle/cycle time"),
+    _demand(
+        "peak",
+        FlowANR,
+        "Peak",
+        "highest mean of Σ q_s/ρ_dry(ANR) over any 0.5 s of the cycle",
+        note="The window of 0.5 s is common practice, no source.",
+    ),
+    _demand("per_cycle", VolumeANR, "Per cycle", "Σ air of a cycle"),
+    *_costs("machine"),
+)
+PROJECT: tuple[Figure, ...] = (
+    _supply(
+        "specific_work",
+        "supply.specific_work",
+        SpecificEnergy,
+        "Work of compression",
+        "w = z·n/(n−1)·R·T_in·[(p₂/p₁)^((n−1)/(z·n)) − 1], z stages,\n"
+        "divided by their efficiency; later stages start at the intake's temperature plus the approach",
+        inputs=_COMPRESSOR,
+        note="Per mass of dry air, before drive and motor.",
+    ),
+    _supply(
+        "specific_energy",
+        "supply.specific_energy",
+        SpecificEnergy,
+        "Electricity per mass",
+        "e = w/(η_drive·η_motor), or package power/(free air × density of its dry air) where both are given",
+        inputs=_COMPRESSOR,
+        uses=("supply.specific_work",),
+    ),
+    _supply(
+        "energy_per_anr",
+        "supply.energy_per_anr",
+        ENERGY_PER_ANR,
+        "Electricity per m³ ANR",
+        "e·ρ_dry(ANR),  ρ_dry(ANR) = 1.1703 kg/m³",
+        uses=("supply.specific_energy",),
+    ),
+    _supply(
+        "price_per_anr",
+        "money.per_anr_m3",
+        PriceAir,
+        "Price of 1 m³ ANR",
+        "electricity per m³ ANR × energy price",
+        inputs=("money.energy",),
+        uses=("supply.energy_per_anr",),
+    ),
+    *_costs("project"),
+)
