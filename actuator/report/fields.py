@@ -9,9 +9,8 @@ from typing import Any
 from actuator.answer import Answer
 from actuator.kinds import FieldSpec, fields_of
 from actuator.parts import Project
+from actuator.project.schema import ALTERNATES, FAMILIES, default_text
 from actuator.report.shown import Shown
-
-_CONDUCTANCE_FORMS = ("_cv", "_kv", "_qn", "_s")
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -78,14 +77,13 @@ def _descend(part: Any, base: str, rest: str) -> Iterator[tuple[FieldSpec, Any, 
 def _origin(answer: Answer, spec: FieldSpec, path: str) -> str:
     if answer.document.text(path):
         return "typed"
-    if path.endswith("_c"):
-        for form in _CONDUCTANCE_FORMS:
-            other = path.removesuffix("_c") + form
+    if path.rpartition("_")[0].rpartition(".")[2] in FAMILIES:
+        for way in ALTERNATES:
+            other = f"{path.rpartition('_')[0]}_{way.suffix}"
             typed = answer.document.text(other)
             if typed:
                 return f"typed as {other.rpartition('.')[2]} = {typed}"
-    rule = spec.entry.default if spec.entry is not None else ""
-    return f"default: {rule}" if rule else "default"
+    return f"default: {default_text(spec)}".rstrip()
 
 
 def _value(value: Any, spec: FieldSpec, shown: Shown) -> str:

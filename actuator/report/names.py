@@ -3,22 +3,12 @@
 from __future__ import annotations
 
 import difflib
-import re
 from collections.abc import Iterator
 from dataclasses import dataclass
 
 from actuator.analysis import Analysis
+from actuator.project.paths import join
 from actuator.report.figures import FIGURES, At, Figure
-
-_BARE = re.compile(r"[A-Za-z0-9_-]+")
-
-
-def quoted(name: str) -> str:
-    """A machine's or actuator's name as a step of a path: quoted unless it is a bare TOML key."""
-    if _BARE.fullmatch(name):
-        return name
-    escaped = name.replace("\\", "\\\\").replace('"', '\\"')
-    return f'"{escaped}"'
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -31,13 +21,13 @@ class Named:
     @property
     def name(self) -> str:
         """Full name: machine, actuator and key, ``'"Carton erector".Pusher.extend.stroke_time'``."""
-        return ".".join((*(quoted(owner) for owner in self.at.owner), self.figure.key))
+        return ".".join((*(join((owner,)) for owner in self.at.owner), self.figure.key))
 
     @property
     def spellings(self) -> tuple[str, ...]:
         """Forms that find it: with and without quotes, key or JSON path."""
         endings = (self.figure.key, ".".join(self.figure.json_path))
-        owners = (tuple(quoted(owner) for owner in self.at.owner), self.at.owner)
+        owners = (tuple(join((owner,)) for owner in self.at.owner), self.at.owner)
         return tuple(dict.fromkeys(".".join((*owner, ending)) for owner in owners for ending in endings))
 
 

@@ -1,0 +1,261 @@
+"""What can hurt: cautions that go with an actuator's results, each deferring to those who decide."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+from actuator.air.gas import GAMMA, GRAVITY
+from actuator.errors import Refusal
+from actuator.parts import Actuator, Machine, Site
+from actuator.sources import OWN, PRACTICE, Source
+from actuator.stroke.result import HalfStroke, StrokeResult
+
+ISO_4414 = Source(
+    key="iso4414",
+    title="ISO 4414, Pneumatic fluid power: general rules and safety requirements",
+    edition="2010",
+    how="excerpt",
+)
+PCC_2 = Source(key="pcc2", title="ASME PCC-2, stored energy of a pneumatic test")
+OSHA_BLOW_OFF = Source(key="osha1910.242", title="29 CFR 1910.242(b), United States", how="seen")
+
+STICK_SLIP_SPEED = 0.05
+"""Mean speed below which stick-slip is likely: common practice, no source. [m/s]"""
+BLOW_OFF_GAUGE = 30.0 * 6894.757293168361
+"""30 psi, limit for cleaning with compressed air in 29 CFR 1910.242(b), gauge. [Pa]"""
+
+DECIDE = "Local codes, the makers' data and a licensed practitioner decide."
+
+_SIGNAL_LOST = {
+    "5/2 spring": "the spring moves the valve to rest, taken here as retracting, and the piston goes back "
+    "with full force from wherever it is",
+    "5/2 detent": "the valve stays where it is and the piston completes its stroke with full force",
+    "5/3 closed": "the ports close and the piston stops on trapped air: it gives under load, and creeps as "
+    "seals leak",
+    "5/3 exhausted": "both chambers vent and the piston is free: whatever pushes it moves it",
+    "5/3 pressurised": "both chambers are pressurised and the piston is driven out by the pressure on the "
+    "area of its rod",
+}
+"""What losing the signal does, by valve function, seen from the actuator."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Caution:
+    """What can hurt, with its source.
+
+    Attributes
+    ----------
+    path : str
+        Field, relative to the actuator, or figure that it goes with: ``"load.inclination"``,
+        ``"extend.end_energy"``.
+    text : str
+        What can happen and what to look after.
+    source : str
+        Where that is said.
+    """
+
+    path: str
+    text: str
+    source: str
+
+
+def _caution(path: str, text: str, source: Source) -> Caution:
+    return Caution(path=path, text=f"{text} {DECIDE}", source=str(source))
+
+
+def _weight(actuator: Actuator) -> Iterator[Caution]:
+    """A load on a slope, with nothing in the document that locks it."""
+    load = actuator.load
+    pull = load.mass * GRAVITY * math.sin(load.inclination)
+    if pull == 0.0:
+        return
+    way = "retracts" if pull > 0.0 else "extends"
+    held = actuator.friction.breakaway + load.guide_friction * load.mass * GRAVITY * math.cos(
+        load.inclination
+    )
+    friction = (
+        "The friction given would hold it, but friction is no lock: wear, oil and vibration lower it."
+        if abs(pull) <= held
+        else "The friction given does not hold it."
+    )
+    yield _caution(
+        "load.inclination",
+        f"The weight pulls along the stroke with {abs(pull):.4g} N and {way} the piston when air or "
+        f"signal is lost; no rod lock, check valve or counterweight is part of this calculation. {friction} Secure a "
+        "raised load before anyone reaches under it.",
+        ISO_4414,
+    )
+
+
+def _loss(actuator: Actuator) -> Iterator[Caution]:
+    """Exhaust and stop: what losing signal or supply does."""
+    function = actuator.valve.function
+    yield _caution(
+        "valve.function",
+        f"When the signal is lost with a {function} valve, {_SIGNAL_LOST[function]}. When the supply is lost "
+        "the force goes with the pressure, and the piston follows load and weight. An emergency stop has to "
+        "be judged for both, and for the return of either.",
+        ISO_4414,
+    )
+
+
+def _first_stroke(actuator: Actuator, stroke: StrokeResult | Refusal) -> Iterator[Caution]:
+    """Both chambers vented: nothing to push against."""
+    energy = ""
+    if not isinstance(stroke, Refusal) and not isinstance(stroke.extend.end_energy, Refusal):
+        energy = f" than the {stroke.extend.end_energy:.3g} J of the periodic cycle"
+    meter = (
+        " A throttle on the outflow does not slow this stroke: there is no air to meter."
+        if actuator.throttle.kind == "meter-out"
+        else ""
+    )
+    yield _caution(
+        "extend.end_energy",
+        "The first stroke after venting has no counter-pressure: the piston jumps, and can arrive with much "
+        f"more energy{energy}.{meter} Keep clear when pressure returns; a soft start fills slowly.",
+        ISO_4414,
+    )
+
+
+def _impact(
+    actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal
+) -> Iterator[Caution]:
+    """Pinch points and the energy at the ends."""
+    force = (machine.supply_pressure - site.ambient_pressure) * actuator.area_cap
+    yield _caution(
+        "static.theoretical_extend",
+        f"Rod, load and fixed parts pinch with up to {force:.4g} N extending, and go on pushing at "
+        "standstill. Guard the whole way of the load.",
+        ISO_4414,
+    )
+    if isinstance(stroke, Refusal):
+        return
+    for half in (stroke.extend, stroke.retract):
+        if not isinstance(half.end_energy, Refusal) and half.end_energy > 0.0:
+            yield _caution(
+                f"{half.direction}.end_energy",
+                f"{_gerund(half)} the load arrives with {half.end_energy:.3g} J at a stop that this document "
+                "takes as rigid. The maker's limit for the bare piston, or a cushion or shock absorber rated "
+                "for this energy and its repetition, has to cover it.",
+                PRACTICE,
+            )
+
+
+def _gerund(half: HalfStroke) -> str:
+    return "Extending," if half.direction == "extend" else "Retracting,"
+
+
+def stored_energy(pressure: float, volume: float, ambient: float) -> float:
+    r"""Energy that compressed air gives when it expands to ambient pressure at once.
+
+    Parameters
+    ----------
+    pressure, ambient : float
+        Absolute, before and after. [Pa]
+    volume : float
+        Before. [m³]
+
+    Returns
+    -------
+    float
+        [J]
+
+    Notes
+    -----
+    Isentropic expansion of an ideal gas, without the work on the atmosphere, so on the high side:
+
+    .. math:: E = \frac{p V}{\gamma - 1} [1 - (p_0/p)^{(\gamma - 1)/\gamma}]
+
+    References
+    ----------
+    ASME PCC-2, stored energy of a pneumatic test (from memory).
+    """
+    return pressure * volume / (GAMMA - 1.0) * (1.0 - (ambient / pressure) ** ((GAMMA - 1.0) / GAMMA))
+
+
+def _stored(actuator: Actuator, machine: Machine, site: Site) -> Iterator[Caution]:
+    """Air that stays under pressure in a chamber."""
+    p, p0 = machine.supply_pressure, site.ambient_pressure
+    if p <= p0:
+        return
+    volume = actuator.area_cap * actuator.stroke + actuator.dead_volume_cap
+    energy = stored_energy(p, volume, p0)
+    yield _caution(
+        "stroke",
+        f"Extended, the cap chamber holds {volume * 1e3:.3g} L at supply pressure: "
+        f"p·V = {(p - p0) * volume / 100.0:.3g} bar·L gauge, about {energy:.3g} J if it bursts free. Air may "
+        "stay trapped after the supply is shut off: vent it and prove it before opening a fitting. For "
+        "receivers compare p·V with the local pressure equipment rules.",
+        PCC_2,
+    )
+
+
+def _noise_and_blow_off(machine: Machine, site: Site) -> Iterator[Caution]:
+    yield _caution(
+        "valve.exhaust_c",
+        "Open exhausts are loud, up to levels that need hearing protection. A silencer lowers the noise and "
+        "the exhaust conductance, more so as it clogs: enter the conductance of both.",
+        PRACTICE,
+    )
+    if machine.supply_pressure - site.ambient_pressure > BLOW_OFF_GAUGE:
+        yield _caution(
+            "machine.supply_pressure",
+            "This supply is above 30 psi (2.07 bar) gauge. As one example of a local rule, the United States "
+            "allow cleaning with compressed air only below that pressure, with chip guarding and personal "
+            "protection. Never point it at people.",
+            OSHA_BLOW_OFF,
+        )
+
+
+def _motion(stroke: StrokeResult | Refusal) -> Iterator[Caution]:
+    """Slow strokes, and strokes that do not finish."""
+    if isinstance(stroke, Refusal):
+        return
+    for half in (stroke.extend, stroke.retract):
+        if not half.completed:
+            yield _caution(
+                f"{half.direction}.position_reached",
+                f"{_gerund(half)} the piston is sent back before it arrives. Whatever waits for the end of "
+                "the stroke, a sensor or the next motion, never gets it.",
+                OWN,
+            )
+        elif not isinstance(half.mean_speed, Refusal) and half.mean_speed < STICK_SLIP_SPEED:
+            yield _caution(
+                f"{half.direction}.mean_speed",
+                f"{_gerund(half)} the mean speed of {half.mean_speed * 1e3:.3g} mm/s lies below 50 mm/s, "
+                "where stick-slip is likely: the piston may halt and jump, and the times of slow strokes follow "
+                "friction, which drifts.",
+                PRACTICE,
+            )
+
+
+def cautions(
+    actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal
+) -> tuple[Caution, ...]:
+    """Cautions that go with one actuator's results.
+
+    Parameters
+    ----------
+    actuator : Actuator
+    machine : Machine
+        That it works in.
+    site : Site
+    stroke : StrokeResult or Refusal
+        Its simulated cycle.
+
+    Returns
+    -------
+    tuple of Caution
+        The gravest first.
+    """
+    return (
+        *_weight(actuator),
+        *_loss(actuator),
+        *_first_stroke(actuator, stroke),
+        *_impact(actuator, machine, site, stroke),
+        *_motion(stroke),
+        *_stored(actuator, machine, site),
+        *_noise_and_blow_off(machine, site),
+    )
