@@ -83,8 +83,8 @@ def _weight(actuator: Actuator) -> Iterator[Caution]:
     yield _caution(
         "load.inclination",
         f"The weight pulls along the stroke with {abs(pull):.4g} N and {way} the piston when air or "
-        f"signal is lost; no rod lock, check valve or counterweight is part of this calculation. {friction} Secure a "
-        "raised load before anyone reaches under it.",
+        f"signal is lost; no rod lock, check valve or counterweight is part of this calculation. {friction} "
+        "Secure a raised load before anyone reaches under it.",
         ISO_4414,
     )
 
@@ -172,7 +172,8 @@ def stored_energy(pressure: float, volume: float, ambient: float) -> float:
     ----------
     ASME PCC-2, stored energy of a pneumatic test (from memory).
     """
-    return pressure * volume / (GAMMA - 1.0) * (1.0 - (ambient / pressure) ** ((GAMMA - 1.0) / GAMMA))
+    cooled: float = (ambient / pressure) ** ((GAMMA - 1.0) / GAMMA)
+    return pressure * volume / (GAMMA - 1.0) * (1.0 - cooled)
 
 
 def _stored(actuator: Actuator, machine: Machine, site: Site) -> Iterator[Caution]:
@@ -225,8 +226,8 @@ def _motion(stroke: StrokeResult | Refusal) -> Iterator[Caution]:
             yield _caution(
                 f"{half.direction}.mean_speed",
                 f"{_gerund(half)} the mean speed of {half.mean_speed * 1e3:.3g} mm/s lies below 50 mm/s, "
-                "where stick-slip is likely: the piston may halt and jump, and the times of slow strokes follow "
-                "friction, which drifts.",
+                "where stick-slip is likely: the piston may halt and jump, and the times of slow strokes "
+                "follow friction, which drifts.",
                 PRACTICE,
             )
 

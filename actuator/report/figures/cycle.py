@@ -34,7 +34,9 @@ def _air(name: str) -> Callable[[At], float | Refusal]:
     return get
 
 
-def _ledger(name: str) -> Callable[[At], float | Refusal]:
+def ledger_item(name: str) -> Callable[[At], float | Refusal]:
+    """Reader of one item of the exergy ledger, with the refusal of the cycle or of the ledger."""
+
     def get(at: At) -> float | Refusal:
         stroke = at.actuator.stroke
         if isinstance(stroke, Refusal):
@@ -62,7 +64,7 @@ def share_of(part: Callable[[At], float | Refusal], whole: Callable[[At], float 
 
 
 def _loss(at: At) -> float | Refusal:
-    pushed, vented = _ledger("exhaust_path")(at), _ledger("exhaust")(at)
+    pushed, vented = ledger_item("exhaust_path")(at), ledger_item("exhaust")(at)
     if isinstance(pushed, Refusal):
         return pushed
     return vented if isinstance(vented, Refusal) else pushed + vented
@@ -231,7 +233,7 @@ def _item(name: str, label: str, formula: str, note: str, group: str, heading: s
         sources=("own",),
         inputs=SIMULATION,
         uses=tuple(f"cycle.exergy.{row[0]}" for row in _ITEMS[:-1]) if name == "residual" else (),
-        get=_ledger(name),
+        get=ledger_item(name),
         simulated=True,
         grouped=True,
         note=note,
@@ -251,7 +253,7 @@ SHARES = tuple(
         formula=f"{label.lower()}/supplied",
         sources=("own",),
         uses=(f"cycle.exergy.{name}", "cycle.exergy.supplied"),
-        get=share_of(_ledger(name), _ledger("supplied")),
+        get=share_of(ledger_item(name), ledger_item("supplied")),
         simulated=True,
     )
     for name, label, _, _ in _ITEMS[1:]
@@ -280,7 +282,7 @@ LOSS: tuple[Figure, ...] = (
         formula="exhaust loss/supplied",
         sources=("own",),
         uses=("cycle.exhaust_loss", "cycle.exergy.supplied"),
-        get=share_of(_loss, _ledger("supplied")),
+        get=share_of(_loss, ledger_item("supplied")),
         simulated=True,
     ),
 )

@@ -34,9 +34,14 @@ _QUANTITIES: tuple[tuple[str, Any, str, str], ...] = (
         "critical_ratio",
         CriticalRatio,
         "critical ratio b",
-        "fit of q/q_choked over p_d/p_u to the exact chain; small drops give b = 1 − C²·Σ(1 − bᵢ)/Cᵢ²",
+        "b of the pair (b, m) with which q/q_choked = [1 − ((r − b)/(1 − b))²]^m comes nearest the chain",
     ),
-    ("subsonic_index", SubsonicIndex, "subsonic index m", "fit of q/q_choked = [1 − ((r − b)/(1 − b))²]^m"),
+    (
+        "subsonic_index",
+        SubsonicIndex,
+        "subsonic index m",
+        "m of the pair (b, m) with which q/q_choked = [1 − ((r − b)/(1 − b))²]^m comes nearest the chain",
+    ),
     ("fit_error", RATIO, "fit error", "max |q_fit − q_chain|/q_choked over all pressure ratios"),
 )
 

@@ -42,6 +42,7 @@ def _static(
     uses: tuple[str, ...] = (),
     direction: Direction = "",
     sources: tuple[str, ...] = ("own",),
+    group: str = "Static force",
     note: str = "",
 ) -> Figure:
     return Figure(
@@ -49,7 +50,7 @@ def _static(
         key=f"static.{name}",
         kind=alias if isinstance(alias, Kind) else kind(alias),
         label=label,
-        group="Static force",
+        group=group,
         formula=formula,
         sources=sources,
         inputs=inputs,
@@ -61,7 +62,7 @@ def _static(
 
 
 _LOAD_NOTE = "At its worst position; without inertia and without the cylinder's own friction."
-_RATIO_NOTE = "Common practice keeps it below about 0.7, below 0.5 where the motion has to be fast and even."
+_RATIO_NOTE = "Common practice keeps it below 0.5 for fast strokes, 0.7 for slow ones, 0.85 to clamp."
 
 STATIC: tuple[Figure, ...] = (
     _static(
@@ -128,8 +129,9 @@ STATIC: tuple[Figure, ...] = (
         "required_bore",
         Length,
         "Required bore",
-        "D = √(4·[F_load·(1 + reserve) + F_c]/(π·(p − p₀)·a)),  a = 1 extending, 1 − (d/D)² retracting; "
-        "the larger of both",
+        "D = √(4·A/π), A the larger of A_e = F_e·(1 + ρ)/[(p_s − p₀)·(1 − f)] and\n"
+        "A_r = F_r·(1 + ρ)/[(p_r − p₀)·(1 − k²) − f·(p_s − p₀)];  f = F_c/(F of extending), k = d/D, "
+        "ρ the wanted reserve",
         inputs=(
             *_SIZES,
             "return_pressure",
@@ -139,7 +141,8 @@ STATIC: tuple[Figure, ...] = (
             *_PRESSURES,
         ),
         uses=("static.load_extend", "static.load_retract"),
-        note="Closed form, rod in proportion to the bore.",
+        group="Size",
+        note="Running friction and rod in proportion to the bore; no reserve where none is asked.",
     ),
 )
 
@@ -180,7 +183,7 @@ ROD: tuple[Figure, ...] = (
         "slenderness",
         Number,
         "Slenderness",
-        "λ = K·L/(d/4),  K by mounting and rod end",
+        "λ = K·L/(d/4),  K = 0.65 to 2.1 by mounting and rod end",
         inputs=_COLUMN,
     ),
     _rod(

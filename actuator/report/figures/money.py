@@ -18,7 +18,7 @@ from actuator.kinds import (
     VolumeANR,
     YearlyEnergy,
 )
-from actuator.report.figures.cycle import RATIO, share_of
+from actuator.report.figures.cycle import RATIO, ledger_item, share_of
 from actuator.report.figures.registry import At, Figure, Level, kind
 
 ENERGY_PER_ANR = Kind(dimension="energy_per_volume", unit="J/m**3", suffix="_J_m3")
@@ -147,20 +147,13 @@ def _upstream(name: str) -> Callable[[At], float | Refusal]:
     return get
 
 
-def _supplied(at: At) -> float | Refusal:
-    stroke = at.actuator.stroke
-    if isinstance(stroke, Refusal):
-        return stroke
-    return stroke.ledger if isinstance(stroke.ledger, Refusal) else stroke.ledger.supplied
-
-
 UPSTREAM: tuple[Figure, ...] = (
     Figure(
         level="actuator",
         key="cycle.upstream.electricity",
         kind=kind(Energy),
         label="Electricity at the meter",
-        group="From the meter to the port",
+        group="From the meter to the load",
         formula="air drawn × electricity per mass of air",
         sources=("own",),
         uses=("cycle.air_drawn", "project.supply.specific_energy"),
@@ -172,23 +165,30 @@ UPSTREAM: tuple[Figure, ...] = (
         key="cycle.upstream.compression",
         kind=kind(Energy),
         label="Work on the air",
-        group="From the meter to the port",
+        group="From the meter to the load",
         formula="air drawn × work of compression per mass of air",
         sources=("own",),
         uses=("cycle.air_drawn", "project.supply.specific_work"),
         get=_upstream("specific_work"),
         grouped=True,
     ),
-    Figure(
-        level="actuator",
-        key="cycle.port_share",
-        kind=RATIO,
-        label="Exergy at the port, share",
-        group="From the meter to the port",
-        formula="supplied at the port/electricity at the meter",
-        sources=("own",),
-        uses=("cycle.exergy.supplied", "cycle.upstream.electricity"),
-        get=share_of(_supplied, _upstream("specific_energy")),
+    *(
+        Figure(
+            level="actuator",
+            key=f"cycle.upstream_share.{name}",
+            kind=RATIO,
+            label=f"{label}, share",
+            group="From the meter to the load",
+            formula=f"{label.lower()}/electricity at the meter",
+            sources=("own",),
+            uses=(used, "cycle.upstream.electricity"),
+            get=share_of(read, _upstream("specific_energy")),
+        )
+        for name, label, used, read in (
+            ("compression", "Work on the air", "cycle.upstream.compression", _upstream("specific_work")),
+            ("port", "Supplied at the port", "cycle.exergy.supplied", ledger_item("supplied")),
+            ("load", "Load", "cycle.exergy.load", ledger_item("load")),
+        )
     ),
 )
 
