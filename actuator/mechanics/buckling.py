@@ -26,7 +26,7 @@ END_FACTORS = {
     ("hinged", "hinged-guided"): 1.0,
     ("fixed", "free"): 2.1,
 }
-"""Effective over real length, recommended design values (theory 0.5, 0.7, 0.7, 1, 2); Source ``aisc360``. [1]"""
+"""Effective over real length, recommended for design (theory 0.5, 0.7, 0.7, 1, 2); Source ``aisc360``. [1]"""
 
 SHARE_OF_STROKE = {
     "foot": 0.0,

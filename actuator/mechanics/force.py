@@ -225,7 +225,7 @@ def force_reserve(theoretical: float, friction: float, load: float) -> float | R
     Returns
     -------
     float or Refusal
-        (theoretical − friction − load)/load; negative where the load is not carried; refused without load. [1]
+        (theoretical − friction − load)/load; negative where the load is not carried, refused without. [1]
     """
     if load <= 0.0:
         return Refusal("no load")
