@@ -205,8 +205,6 @@ def never() -> bool:
     return False
 
 
-def analyse(
-    project: Project, previous: Analysis | None = None, cancelled: Callable[[], bool] = never
-) -> Analysis:
+def analyse(project: Project, previous: Analysis | None = None, cancelled: Callable[[], bool] = never) -> Analysis:
     """Compute everything; placeholder signature while the rooms are built."""
     raise RuntimeError("analysis is being built")

@@ -53,7 +53,5 @@ def work_out(
     checked = validate(document)
     if isinstance(checked, Project):
         known = previous.analysis if previous is not None else None
-        return Answer(
-            document=document, problems=(), project=checked, analysis=analyse(checked, known, cancelled)
-        )
+        return Answer(document=document, problems=(), project=checked, analysis=analyse(checked, known, cancelled))
     return Answer(document=document, problems=checked, project=None, analysis=None)

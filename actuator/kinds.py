@@ -85,9 +85,7 @@ class Entry:
 AbsPressure = Annotated[float, Kind(dimension="pressure", unit="Pa", suffix="_Pa", above=0.0)]
 PressureDifference = Annotated[float, Kind(dimension="pressure_difference", unit="Pa", suffix="_Pa")]
 Temperature = Annotated[float, Kind(dimension="temperature", unit="K", suffix="_K", above=0.0)]
-TemperatureDifference = Annotated[
-    float, Kind(dimension="temperature_difference", unit="K", suffix="_K", at_least=0.0)
-]
+TemperatureDifference = Annotated[float, Kind(dimension="temperature_difference", unit="K", suffix="_K", at_least=0.0)]
 Length = Annotated[float, Kind(dimension="length", unit="m", suffix="_m", above=0.0)]
 Position = Annotated[float, Kind(dimension="length", unit="m", suffix="_m", at_least=0.0)]
 Area = Annotated[float, Kind(dimension="area", unit="m**2", suffix="_m2", above=0.0)]
@@ -100,9 +98,7 @@ Speed = Annotated[float, Kind(dimension="speed", unit="m/s", suffix="_m_s", at_l
 PositiveSpeed = Annotated[float, Kind(dimension="speed", unit="m/s", suffix="_m_s", above=0.0)]
 Time = Annotated[float, Kind(dimension="time", unit="s", suffix="_s", at_least=0.0)]
 Period = Annotated[float, Kind(dimension="time", unit="s", suffix="_s", above=0.0)]
-Angle = Annotated[
-    float, Kind(dimension="angle", unit="rad", suffix="_rad", at_least=-math.pi / 2, at_most=math.pi / 2)
-]
+Angle = Annotated[float, Kind(dimension="angle", unit="rad", suffix="_rad", at_least=-math.pi / 2, at_most=math.pi / 2)]
 Share = Annotated[float, Kind(dimension="share", unit="1", at_least=0.0, at_most=1.0)]
 PositiveShare = Annotated[float, Kind(dimension="share", unit="1", above=0.0, at_most=1.0)]
 Ratio = Annotated[float, Kind(dimension="share", unit="1", at_least=0.0)]
@@ -111,12 +107,8 @@ PositiveNumber = Annotated[float, Kind(dimension="number", unit="1", above=0.0)]
 Index = Annotated[float, Kind(dimension="number", unit="1", at_least=1.0, at_most=1.4)]
 CriticalRatio = Annotated[float, Kind(dimension="number", unit="1", at_least=0.0, at_most=0.9)]
 SubsonicIndex = Annotated[float, Kind(dimension="number", unit="1", at_least=0.3, at_most=1.0)]
-Conductance = Annotated[
-    float, Kind(dimension="conductance", unit="m**3/(s*Pa)", suffix="_m3_s_Pa", above=0.0)
-]
-HeatTransfer = Annotated[
-    float, Kind(dimension="heat_transfer", unit="W/(m**2*K)", suffix="_W_m2_K", at_least=0.0)
-]
+Conductance = Annotated[float, Kind(dimension="conductance", unit="m**3/(s*Pa)", suffix="_m3_s_Pa", above=0.0)]
+HeatTransfer = Annotated[float, Kind(dimension="heat_transfer", unit="W/(m**2*K)", suffix="_W_m2_K", at_least=0.0)]
 HoursPerYear = Annotated[float, Kind(dimension="hours_per_year", unit="1", at_least=0.0, at_most=1.0)]
 """Share of the 8760 h of a year; typed as ``4800 h/year``. [1]"""
 VolumeANR = Annotated[float, Kind(dimension="volume_anr", unit="m**3", suffix="_anr_m3", at_least=0.0)]
@@ -243,8 +235,6 @@ def check(part: Any) -> None:
             if fault:
                 problems.append(Problem(path=spec.key, given=f"{value!r} {spec.kind.unit}", allowed=fault))
         elif spec.choices and value not in spec.choices:
-            problems.append(
-                Problem(path=spec.key, given=str(value), allowed="one of " + ", ".join(spec.choices))
-            )
+            problems.append(Problem(path=spec.key, given=str(value), allowed="one of " + ", ".join(spec.choices)))
     if problems:
         raise InputError(*problems)

@@ -51,9 +51,7 @@ class ProcessForce:
         check(self)
         if not self.end > self.start:
             raise InputError(
-                Problem(
-                    path="to", given=f"{self.end:g} m", allowed=f"must lie beyond from = {self.start:g} m"
-                )
+                Problem(path="to", given=f"{self.end:g} m", allowed=f"must lie beyond from = {self.start:g} m")
             )
 
 
@@ -61,9 +59,7 @@ class ProcessForce:
 class Load:
     """What the actuator moves and what opposes it."""
 
-    mass: Annotated[
-        Mass, Entry("Moved mass", "Everything that moves, piston and rod included.", example="20 kg")
-    ]
+    mass: Annotated[Mass, Entry("Moved mass", "Everything that moves, piston and rod included.", example="20 kg")]
     inclination: Annotated[
         Angle,
         Entry("Inclination", "Above the horizontal; positive where extending lifts.", example="0 deg"),
@@ -149,9 +145,7 @@ class Valve:
 
     supply_c: Annotated[
         Conductance,
-        Entry(
-            "Supply C", "Sonic conductance, supply to cylinder port (ISO 6358).", example="2.0 dm3/(s*bar)"
-        ),
+        Entry("Supply C", "Sonic conductance, supply to cylinder port (ISO 6358).", example="2.0 dm3/(s*bar)"),
     ]
     supply_b: Annotated[
         CriticalRatio,
@@ -230,15 +224,11 @@ class Throttle:
     ] = "none"
     extend_c: Annotated[
         Conductance | None,
-        Entry(
-            "Extending C", "Conductance of the needle that acts while extending.", example="1.2 dm3/(s*bar)"
-        ),
+        Entry("Extending C", "Conductance of the needle that acts while extending.", example="1.2 dm3/(s*bar)"),
     ] = None
     retract_c: Annotated[
         Conductance | None,
-        Entry(
-            "Retracting C", "Conductance of the needle that acts while retracting.", example="1.2 dm3/(s*bar)"
-        ),
+        Entry("Retracting C", "Conductance of the needle that acts while retracting.", example="1.2 dm3/(s*bar)"),
     ] = None
     b: Annotated[
         CriticalRatio,
@@ -251,9 +241,7 @@ class Throttle:
     ] = 0.3
     free_c: Annotated[
         Conductance | None,
-        Entry(
-            "Free C", "Conductance in the free direction, through the check valve.", example="3 dm3/(s*bar)"
-        ),
+        Entry("Free C", "Conductance in the free direction, through the check valve.", example="3 dm3/(s*bar)"),
     ] = None
 
     def __post_init__(self) -> None:
@@ -301,9 +289,7 @@ class Require:
     def __post_init__(self) -> None:
         check(self)
         if self.force_time is not None and self.force_at_end is None:
-            raise InputError(
-                Problem(path="force_time", given=f"{self.force_time:g} s", allowed="needs force_at_end")
-            )
+            raise InputError(Problem(path="force_time", given=f"{self.force_time:g} s", allowed="needs force_at_end"))
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -404,9 +390,7 @@ class Actuator:
     load: Annotated[Load, Entry("Load", "What the actuator moves.")]
     friction: Annotated[Friction, Entry("Friction", "Friction of the cylinder.")]
     valve: Annotated[Valve, Entry("Valve", "The directional valve.")]
-    throttle: Annotated[Throttle, Entry("Throttle", "One-way flow controls.")] = field(
-        default_factory=Throttle
-    )
+    throttle: Annotated[Throttle, Entry("Throttle", "One-way flow controls.")] = field(default_factory=Throttle)
     require: Annotated[Require, Entry("Requirements", "What the job asks.")] = field(default_factory=Require)
 
     def __post_init__(self) -> None:
@@ -414,9 +398,7 @@ class Actuator:
         problems = []
         if self.rod >= self.bore:
             problems.append(
-                Problem(
-                    path="rod", given=f"{self.rod:g} m", allowed=f"must be below the bore, {self.bore:g} m"
-                )
+                Problem(path="rod", given=f"{self.rod:g} m", allowed=f"must be below the bore, {self.bore:g} m")
             )
         if (self.wall_heat_transfer is None) == (self.polytropic_index is None):
             problems.append(

@@ -66,9 +66,7 @@ class Machine:
     """A machine with its actuators, cycling."""
 
     name: Annotated[str, Entry("Name", "Unique in the document.", example='"Carton erector"')]
-    quantity: Annotated[
-        Count, Entry("Quantity", "How many such machines there are.", default="1", example="1")
-    ] = 1
+    quantity: Annotated[Count, Entry("Quantity", "How many such machines there are.", default="1", example="1")] = 1
     supply_pressure: Annotated[
         AbsPressure,
         Entry("Supply pressure", "At the machine's inlet, while air flows.", example="6 bar gauge"),
@@ -82,9 +80,7 @@ class Machine:
             example="20 degC",
         ),
     ]
-    cycle_time: Annotated[
-        Period, Entry("Cycle time", "From one start of the cycle to the next.", example="4 s")
-    ]
+    cycle_time: Annotated[Period, Entry("Cycle time", "From one start of the cycle to the next.", example="4 s")]
     hours: Annotated[
         HoursPerYear,
         Entry(
@@ -98,9 +94,7 @@ class Machine:
         Share,
         Entry("Utilisation", "Share of those hours in which it cycles.", default="100 %", example="85 %"),
     ] = 1.0
-    actuators: Annotated[
-        tuple[Actuator, ...], Entry("Actuators", "The machine's air cylinders.", key="actuator")
-    ] = ()
+    actuators: Annotated[tuple[Actuator, ...], Entry("Actuators", "The machine's air cylinders.", key="actuator")] = ()
 
     def __post_init__(self) -> None:
         check(self)
@@ -221,9 +215,9 @@ class Plant:
 class Money:
     """Prices and carbon."""
 
-    currency: Annotated[
-        str, Entry("Currency", "Three capital letters (ISO 4217).", default="EUR", example='"EUR"')
-    ] = "EUR"
+    currency: Annotated[str, Entry("Currency", "Three capital letters (ISO 4217).", default="EUR", example='"EUR"')] = (
+        "EUR"
+    )
     energy: Annotated[
         EnergyPrice,
         Entry(

@@ -1,0 +1,248 @@
+"""From the kernel's history and event log to arrays and half-stroke figures."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from actuator.air.gas import CV, GAMMA
+from actuator.errors import Refusal
+from actuator.parts import Actuator, Machine
+from actuator.stroke import layout as at
+from actuator.stroke.result import Array, HalfStroke
+
+_BETWEEN = np.array([0.25, 0.5, 0.75])
+"""Fractions of a step at which the history is filled in by its cubic."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class Histories:
+    """Histories of one cycle; fields as in :class:`actuator.stroke.result.StrokeResult`."""
+
+    time: Array
+    position: Array
+    speed: Array
+    p_cap: Array
+    p_rod: Array
+    temp_cap: Array
+    temp_rod: Array
+    volume_cap: Array
+    volume_rod: Array
+    flow_supply: Array
+    flow_exhaust: Array
+
+
+def _cubic(left: Array, right: Array, rate_left: Array, rate_right: Array, h: Array) -> tuple[Array, Array]:
+    """Values and rates, shape (steps, 3), of the cubics through both ends of each step."""
+    z = _BETWEEN[None, :]
+    a, b, h = left[:, None], right[:, None], h[:, None]
+    ra, rb = rate_left[:, None] * h, rate_right[:, None] * h
+    value = (1 + 2 * z) * (1 - z) ** 2 * a + z * (1 - z) ** 2 * ra + z**2 * (3 - 2 * z) * b + z**2 * (z - 1) * rb
+    rate = (6 * z * (1 - z) * (b - a) + (1 - z) * (1 - 3 * z) * ra + z * (3 * z - 2) * rb) / h
+    return value, rate
+
+
+def fill_in(rows: Array, par: Array) -> Histories:
+    """Arrays of a cycle from the kernel's history.
+
+    Parameters
+    ----------
+    rows : ndarray
+        Shape (n, HISTORY_WIDTH); the two sides of an event stand in two rows of equal time.
+    par : ndarray
+        The kernel's parameters.
+
+    Returns
+    -------
+    Histories
+        Read-only arrays, three points of its cubic added within each step.
+    """
+    time, side = rows[:, at.H_TIME], rows[:, at.H_SIDE]
+    h = np.diff(time)
+    steps = np.flatnonzero(h > 0.0)
+    keys = np.concatenate([np.arange(len(time), dtype=float), (steps[:, None] + _BETWEEN[None, :]).ravel()])
+    order = np.argsort(keys, kind="stable")
+
+    def merged(nodes: Array, between: Array) -> Array:
+        out: Array = np.concatenate([nodes, between.ravel()])[order]
+        return out
+
+    states = []
+    state_rates = []
+    for i in range(at.N_STATE):
+        values, slopes = rows[:, at.H_STATE + i], rows[:, at.H_RATE + i]
+        mid, mid_rate = _cubic(values[steps], values[steps + 1], slopes[steps], slopes[steps + 1], h[steps])
+        states.append(merged(values, mid))
+        state_rates.append(merged(slopes, mid_rate))
+    x, v, m_cap, u_cap, m_rod, u_rod = states
+    vol_cap = par[at.DEAD_CAP] + par[at.AREA_CAP] * x
+    vol_rod = par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - x)
+    cap_on_supply = merged(side, np.repeat(side[steps], len(_BETWEEN))) > 0.0
+    flow_cap, flow_rod = state_rates[at.M_CAP], state_rates[at.M_ROD]
+    found = {
+        "time": merged(time, time[steps, None] + _BETWEEN[None, :] * h[steps, None]),
+        "position": x,
+        "speed": v,
+        "p_cap": (GAMMA - 1.0) * u_cap / vol_cap,
+        "p_rod": (GAMMA - 1.0) * u_rod / vol_rod,
+        "temp_cap": u_cap / (m_cap * CV),
+        "temp_rod": u_rod / (m_rod * CV),
+        "volume_cap": vol_cap,
+        "volume_rod": vol_rod,
+        "flow_supply": np.where(cap_on_supply, flow_cap, flow_rod),
+        "flow_exhaust": -np.where(cap_on_supply, flow_rod, flow_cap),
+    }
+    for array in found.values():
+        array.setflags(write=False)
+    return Histories(**found)
+
+
+def _arrival(log: Array, sign: float) -> int | None:
+    """Index of the first arrival at that end in the log."""
+    hits = np.flatnonzero((log[:, at.E_CODE] == at.ARRIVE) & (log[:, at.E_SIGN] == sign))
+    return int(hits[0]) if len(hits) else None
+
+
+def _start_of(log: Array, arrival: int, sign: float, since: float) -> float:
+    """Time of the start of the motion that ends at ``arrival``; a stick within 1 ms of its restart is no end."""
+    start = since
+    for i in range(arrival - 1, -1, -1):
+        code = log[i, at.E_CODE]
+        if code == at.START and log[i, at.E_SIGN] == sign:
+            start = log[i, at.E_TIME]
+        elif (code == at.STICK and start - log[i, at.E_TIME] > 1e-3) or code in (at.START, at.ARRIVE):
+            break
+    return float(start)
+
+
+def half_stroke(
+    sign: float, actuator: Actuator, machine: Machine, ambient: float, log: Array, par: Array, past: Histories
+) -> HalfStroke:
+    """Figures of one way of the piston.
+
+    Parameters
+    ----------
+    sign : float
+        1 extend, -1 retract.
+    actuator, machine : part
+    ambient : float
+        Ambient pressure, absolute. [Pa]
+    log : ndarray
+        Shape (n, EVENT_WIDTH), events of one cycle.
+    par : ndarray
+        The kernel's parameters.
+    past : Histories
+        Of the same cycle.
+    """
+    period, delay = machine.cycle_time, actuator.valve.delay
+    direction, other = ("extend", "retract") if sign > 0.0 else ("retract", "extend")
+    command = actuator.extend_at if sign > 0.0 else actuator.retract_at
+    counter = actuator.retract_at if sign > 0.0 else actuator.extend_at
+    opens = (command + delay) % period
+    lasts = (counter - command) % period
+
+    # the log from this way's switching on, times counted from its command
+    log = log.copy()
+    log[:, at.E_TIME] = (log[:, at.E_TIME] - opens + 1e-12 * period) % period + delay - 1e-12 * period
+    first = np.flatnonzero((log[:, at.E_CODE] == at.SWITCH) & (log[:, at.E_SIGN] == sign))[0]
+    log = np.concatenate([log[first:], log[:first]])
+    own_mass = at.E_M_CAP if sign > 0.0 else at.E_M_ROD
+    back = np.flatnonzero(log[:, at.E_CODE] == at.SWITCH)[1]
+    air_drawn = float(log[back, own_mass] - log[0, own_mass])
+
+    since_open = (past.time - opens) % period
+    in_half = since_open <= lasts
+    speeds = sign * past.speed
+    reached = float(past.position.max() if sign > 0.0 else past.position.min())
+    peak_flow = float(past.flow_supply[in_half].max(initial=0.0))
+
+    arrival = _arrival(log, sign)
+    if arrival is None:
+        way = reached if sign > 0.0 else actuator.stroke - reached
+        end = actuator.stroke if sign > 0.0 else 0.0
+        if abs(log[0, at.E_X] - end) <= 1e-9 * actuator.stroke:
+            reason = f"the piston stands at this end already: it did not {other} before"
+        elif way <= 1e-9 * actuator.stroke:
+            reason = "the piston does not start"
+        else:
+            whole = actuator.stroke * 1e3
+            reason = f"the end is not reached: {way * 1e3:.4g} mm of {whole:.4g} mm before the {other} stroke"
+        lost = Refusal(reason, f"{direction}.stroke_time")
+        return HalfStroke(
+            direction=direction,
+            completed=False,
+            position_reached=reached,
+            reaction_time=lost,
+            stroke_time=lost,
+            settled_time=lost,
+            force_time=lost,
+            force_at_end=lost,
+            mean_speed=lost,
+            peak_speed=float(speeds.max(initial=0.0)),
+            end_speed=lost,
+            end_energy=lost,
+            peak_flow=peak_flow,
+            air_drawn=air_drawn,
+        )
+    arrived = float(log[arrival, at.E_TIME])
+    started = _start_of(log, arrival, sign, delay)
+    later = (log[:, at.E_CODE] == at.ARRIVE) & (log[:, at.E_SIGN] == sign) & (log[:, at.E_TIME] <= lasts + delay)
+    settled = float(log[later, at.E_TIME].max(initial=arrived))
+    end_speed = abs(float(log[arrival, at.E_V]))
+    force_time, force = _standing_force(sign, actuator, ambient, par, past, since_open + delay, arrived, lasts + delay)
+    return HalfStroke(
+        direction=direction,
+        completed=True,
+        position_reached=reached,
+        reaction_time=started,
+        stroke_time=arrived,
+        settled_time=settled,
+        force_time=force_time,
+        force_at_end=force,
+        mean_speed=actuator.stroke / (arrived - started),
+        peak_speed=max(float(speeds.max(initial=0.0)), end_speed),
+        end_speed=end_speed,
+        end_energy=0.5 * actuator.load.mass * end_speed**2,
+        peak_flow=peak_flow,
+        air_drawn=air_drawn,
+    )
+
+
+def _standing_force(
+    sign: float,
+    actuator: Actuator,
+    ambient: float,
+    par: Array,
+    past: Histories,
+    since_command: Array,
+    arrived: float,
+    ends: float,
+) -> tuple[float | Refusal, float | Refusal]:
+    """Time after arrival until the wanted force stands, and the force at the next switching."""
+    field = "extend.force_time" if sign > 0.0 else "retract.force_time"
+    order = np.argsort(since_command, kind="stable")
+    clock = since_command[order]
+    push = (
+        past.p_cap * par[at.AREA_CAP]
+        - past.p_rod * par[at.AREA_ROD]
+        - ambient * (par[at.AREA_CAP] - par[at.AREA_ROD])
+        - par[at.WEIGHT]
+        + par[at.CONSTANT]
+    )[order]
+    force = sign * push - actuator.friction.coulomb
+    standing = (clock >= arrived - 1e-12) & (clock <= ends + 1e-12)
+    if not standing.any():
+        lost = Refusal("the valve is switched back before the arrival", field)
+        return lost, lost
+    clock, force = clock[standing], force[standing]
+    wanted = (actuator.require.force_at_end or 0.0) if sign > 0.0 else 0.0
+    enough = np.flatnonzero(force >= wanted)
+    if not len(enough):
+        reason = f"{float(force.max()):.4g} N stand at most, {wanted:.4g} N are wanted"
+        return Refusal(reason, field), float(force[-1])
+    i = int(enough[0])
+    if i == 0:
+        return 0.0, float(force[-1])
+    share = (wanted - force[i - 1]) / (force[i] - force[i - 1])
+    return float(clock[i - 1] + share * (clock[i] - clock[i - 1]) - arrived), float(force[-1])

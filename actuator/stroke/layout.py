@@ -1,0 +1,102 @@
+"""Places of the numbers in the kernel's flat rows; every row holds floats only."""
+
+from __future__ import annotations
+
+# State y: the first six are integrated with error control, the rest are integrals that nothing depends on.
+X, V, M_CAP, U_CAP, M_ROD, U_ROD = range(6)
+N_STATE = 6
+
+(
+    Q_SUPPLIED,
+    Q_LOAD,
+    Q_FRICTION,
+    Q_STOP,
+    Q_THETA_SUPPLY,
+    Q_XI_SUPPLY,
+    Q_XI_EXHAUST,
+    Q_EXHAUST_PATH,
+    Q_HEAT_LOSS,
+    Q_X_SIDE,
+    Q_FILLING,
+    Q_RETURNED,
+    Q_DRAWN,
+    Q_GIVEN_BACK,
+    Q_VENTED,
+    Q_ENTROPY,
+    Q_PISTON,
+    Q_IN_CAP,
+    Q_IN_ROD,
+    Q_OUT_CAP,
+    Q_OUT_ROD,
+    Q_HIN_CAP,
+    Q_HIN_ROD,
+    Q_HOUT_CAP,
+    Q_HOUT_ROD,
+    Q_WORK_CAP,
+    Q_WORK_ROD,
+    Q_WALL_CAP,
+    Q_WALL_ROD,
+) = range(N_STATE, N_STATE + 29)
+N_LEDGER = N_STATE + 29
+
+# Parameters: SI, absolute pressures.
+(
+    AREA_CAP,
+    AREA_ROD,
+    BORE,
+    STROKE,
+    DEAD_CAP,
+    DEAD_ROD,
+    MASS,
+    WEIGHT,
+    GUIDE,
+    CONSTANT,
+    EXTEND_FORCE,
+    RETRACT_FORCE,
+    BREAKAWAY,
+    COULOMB,
+    VISCOUS,
+    STRIBECK,
+    P_LINE,
+    P_EXTEND,
+    P_RETRACT,
+    T_SUPPLY,
+    P_AMB,
+    T_AMB,
+    HEAT,
+    INDEX,
+    OPENING,
+    CUT_EXTEND,
+    CUT_RETRACT,
+    CAP_FILL,
+) = range(28)
+"""WEIGHT = M·g·sin α, GUIDE = μ·M·g·cos α; INDEX 0 = use HEAT; CUT_* positions [m], beyond the end = none."""
+PATHS = ("cap fill", "cap back", "cap exhaust", "cap suck", "rod fill", "rod back", "rod exhaust", "rod suck")
+"""From CAP_FILL on, three numbers (C, b, m) for each of these paths."""
+FILL, BACK, VENT, SUCK = 0, 3, 6, 9
+ROD_FILL = CAP_FILL + 12
+N_PAR = CAP_FILL + 24
+
+# Mode of motion and connection.
+DIRECTION, SIDE, SWITCHED, OPEN_OVER, SHUT, PROCESS, ARMED, STIFF = range(8)
+"""DIRECTION -1, 0, 1; SIDE 1 = cap on supply, -1 = rod on supply; SWITCHED = time of switching [s];
+OPEN_OVER = ramp [s]; SHUT 1 = supply path cut off; PROCESS = process force where the piston is [N];
+ARMED 0 = a start has just failed; STIFF 1 = implicit steps while moving."""
+N_MODE = 8
+
+# Event log: one row of EVENT_WIDTH numbers for each event.
+E_TIME, E_CODE, E_SIGN, E_X, E_V, E_M_CAP, E_M_ROD = range(7)
+EVENT_WIDTH = 7
+SWITCH, START, ARRIVE, STICK, CUT = 1.0, 2.0, 3.0, 4.0, 5.0
+MAX_EVENTS = 400
+
+# History: time, six states, their six rates, side of the connection.
+H_TIME, H_STATE, H_RATE, H_SIDE = 0, 1, 7, 13
+HISTORY_WIDTH = 14
+
+# Info returned by a cycle.
+I_EVENTS, I_ROWS, I_RATES, I_STEPS, I_CYCLES, I_MISMATCH, I_TIME = range(7)
+N_INFO = 7
+
+# Status.
+DONE, STOPPED, TOO_MANY_STEPS, TOO_MANY_EVENTS = 0.0, 1.0, 2.0, 3.0
