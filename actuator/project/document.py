@@ -175,11 +175,7 @@ def told(value: Any) -> str:
     if isinstance(value, (list, dict)):
         return _inline(value)
     return (
-        value.text
-        if isinstance(value, NumberText)
-        else str(value).lower()
-        if isinstance(value, bool)
-        else str(value)
+        value.text if isinstance(value, NumberText) else str(value).lower() if isinstance(value, bool) else str(value)
     )
 
 
@@ -195,11 +191,7 @@ def _inline(value: Any) -> str:
 def quoted(text: str) -> str:
     """A TOML string with what needs escaping escaped."""
     out = "".join(
-        "\\" + sign
-        if sign in '"\\'
-        else f"\\u{ord(sign):04x}"
-        if ord(sign) < 32 or ord(sign) == 127
-        else sign
+        "\\" + sign if sign in '"\\' else f"\\u{ord(sign):04x}" if ord(sign) < 32 or ord(sign) == 127 else sign
         for sign in text
     )
     return f'"{out}"'

@@ -8,7 +8,7 @@ from typing import Any
 from actuator import kinds
 from actuator.parts import Actuator, Friction, Load, Machine, ProcessForce, Require, Site, Throttle, Valve
 from actuator.project.paths import Steps
-from actuator.project.schema import ALTERNATES, FAMILIES, fields
+from actuator.project.schema import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
 from actuator.project.walk import Values, Walk
 
 RESERVED = "supply"
@@ -40,9 +40,7 @@ def _names(walk: Walk, steps: Steps, listed: list[Any]) -> None:
         if not name.strip() or not name.isprintable():
             walk.problem(at, name, 'must be a name of printable characters, e.g. "Pusher"')
         elif name == RESERVED:
-            walk.problem(
-                at, name, f'is reserved for the air supply; write another, e.g. "{name.capitalize()} gate"'
-            )
+            walk.problem(at, name, f'is reserved for the air supply; write another, e.g. "{name.capitalize()} gate"')
         elif name in seen:
             walk.problem(
                 at,
@@ -99,15 +97,11 @@ def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator 
     walk.needed(Actuator, steps, values)
     _size(walk, steps, values)
     _timing(walk, steps, values, machine)
-    _pressure(
-        walk, (*steps, "return_pressure"), values.get("return_pressure"), machine.get("supply_pressure")
-    )
+    _pressure(walk, (*steps, "return_pressure"), values.get("return_pressure"), machine.get("supply_pressure"))
     if "polytropic_index" in values:
         if "wall_heat_transfer" in values:
             at = (*steps, "polytropic_index")
-            walk.problem(
-                at, walk.at(at), "leave out either this or wall_heat_transfer: one replaces the other"
-            )
+            walk.problem(at, walk.at(at), "leave out either this or wall_heat_transfer: one replaces the other")
         values["wall_heat_transfer"] = None
     nested = {
         "load": _load(walk, (*steps, "load"), values.get("load", {}), values),
@@ -183,12 +177,10 @@ def _load(walk: Walk, steps: Steps, here: Any, actuator: Values) -> Load | None:
         listed = values["process_force"]
         at = (*steps, "process_force")
         if isinstance(listed, list):
-            forces = [
-                _process_force(walk, (*at, number), item, actuator) for number, item in enumerate(listed, 1)
-            ]
+            forces = [_process_force(walk, (*at, number), item, actuator) for number, item in enumerate(listed, 1)]
             values["process_force"] = tuple(forces)
         else:
-            walk.problem(at, listed, 'must be a list, [{ from = "380 mm", to = "400 mm", force = "300 N" }]')
+            walk.problem(at, listed, f"must be a list, {PROCESS_FORCE}")
     if len(walk.problems) > before:
         return None
     load: Load | None = walk.built(Load, steps, values)
@@ -198,7 +190,7 @@ def _load(walk: Walk, steps: Steps, here: Any, actuator: Values) -> Load | None:
 def _process_force(walk: Walk, steps: Steps, here: Any, actuator: Values) -> ProcessForce | None:
     before = len(walk.problems)
     if not isinstance(here, dict):
-        walk.problem(steps, here, 'must be { from = "380 mm", to = "400 mm", force = "300 N" }')
+        walk.problem(steps, here, f"must be {PROCESS_FORCE[1:-1]}")
         return None
     values = walk.table(ProcessForce, steps, here)
     if values is None:
@@ -304,9 +296,7 @@ def _throttle(walk: Walk, steps: Steps, here: Any) -> Throttle | None:
         return None
     at = (*steps, "kind")
     if "kind" not in values and at not in walk.bad:
-        walk.problem(
-            at, None, 'is needed where there is a throttle: write kind = "meter-out", "meter-in" or "none"'
-        )
+        walk.problem(at, None, 'is needed where there is a throttle: write kind = "meter-out", "meter-in" or "none"')
     if values.get("kind", "none") != "none":
         for key in ("extend_c", "retract_c", "free_c"):
             if key not in values and (*steps, key) not in walk.bad:
@@ -330,9 +320,7 @@ def _require(walk: Walk, steps: Steps, here: Any) -> Require | None:
         return None
     if "force_time" in values and "force_at_end" not in values and (*steps, "force_at_end") not in walk.bad:
         at = (*steps, "force_at_end")
-        walk.problem(
-            at, None, 'is needed with force_time: write force_at_end = "500 N", or leave force_time out'
-        )
+        walk.problem(at, None, 'is needed with force_time: write force_at_end = "500 N", or leave force_time out')
     if len(walk.problems) > before:
         return None
     require: Require | None = walk.built(Require, steps, values)

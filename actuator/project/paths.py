@@ -47,9 +47,7 @@ def split(path: str) -> tuple[tuple[str, bool], ...]:
             steps.append((_ESCAPE.sub(r"\1", basic), True))
         place = match.end()
     if not steps or place < len(path) or path.rstrip().endswith("."):
-        raise refuse(
-            path, 'is no path; write keys, numbers or quoted names with dots between, "machine.1.cycle_time"'
-        )
+        raise refuse(path, 'is no path; write keys, numbers or quoted names with dots between, "machine.1.cycle_time"')
     return tuple(steps)
 
 
@@ -66,9 +64,7 @@ def join(steps: Steps) -> str:
 @lru_cache(maxsize=8192)
 def steps_of(canonical_path: str) -> Steps:
     """Steps of a path in the numbered form; bare digits are numbers."""
-    return tuple(
-        int(text) if not quoted and text.isdigit() else text for text, quoted in split(canonical_path)
-    )
+    return tuple(int(text) if not quoted and text.isdigit() else text for text, quoted in split(canonical_path))
 
 
 def canonical(path: str, tree: Mapping[str, Any]) -> str:
@@ -126,11 +122,7 @@ def _number(path: str, where: str, items: Any, step: tuple[str, bool], part: Any
         return int(text), 1
     if len(items) <= 1 and not quoted and text in fields(part):
         return 1, 0
-    named = [
-        number
-        for number, item in enumerate(items, 1)
-        if isinstance(item, Mapping) and item.get("name") == text
-    ]
+    named = [number for number, item in enumerate(items, 1) if isinstance(item, Mapping) and item.get("name") == text]
     if len(named) == 1:
         return named[0], 1
     names = ", ".join(

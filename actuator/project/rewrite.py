@@ -81,9 +81,5 @@ def _empty(steps: Steps, parent: Any) -> Any:
     """Missing table or list of tables in the manner that people write it."""
     spec = find(steps)
     if spec is not None and spec.is_list:
-        return (
-            tomlkit.aot()
-            if spec.key == "compressor" and not isinstance(parent, InlineTable)
-            else tomlkit.array()
-        )
+        return tomlkit.aot() if spec.key == "compressor" and not isinstance(parent, InlineTable) else tomlkit.array()
     return tomlkit.inline_table() if isinstance(parent, InlineTable) else tomlkit.table()

@@ -13,6 +13,7 @@ from typing import Any
 from actuator import kinds
 from actuator.kinds import Entry, FieldSpec, Kind, fields_of
 from actuator.parts import Actuator, Compressor, Machine, Money, Project, Site, Valve
+from actuator.unit_table import DIMENSIONS
 
 FORMAT = 1
 ROOT: Any = Project
@@ -69,6 +70,8 @@ ALTERNATES = (
         example="10 mm2",
     ),
 )
+PROCESS_FORCE = '[{ from = "380 mm", to = "400 mm", force = "300 N" }]'
+"""How the list of process forces is typed."""
 FAMILIES = ("supply", "exhaust")
 """Paths of a valve that have alternates: ``supply_c``, ``supply_cv``, ..."""
 
@@ -188,7 +191,7 @@ def _rows(part: Any, prefix: str, leave_out: tuple[str, ...] = ()) -> tuple[Shee
                 label=spec.entry.label,
                 help=spec.entry.help,
                 default=default_text(spec),
-                example=spec.entry.example.strip('"'),
+                example=PROCESS_FORCE if spec.is_list else spec.entry.example.strip('"'),
                 choices=spec.choices,
                 kind=spec.kind,
                 required=spec.required,
@@ -202,14 +205,10 @@ def default_text(spec: FieldSpec) -> str:
     """What holds where a field is left out, in words; empty where nothing does."""
     if spec.entry is not None and spec.entry.default:
         return spec.entry.default
-    if (
-        spec.required
-        or spec.default is None
-        or spec.part is not None
-        or not isinstance(spec.default, (str, float))
-    ):
+    if spec.kind is None or spec.required or not isinstance(spec.default, float):
         return ""
-    return f"{spec.default:g}" if isinstance(spec.default, float) else spec.default
+    unit = DIMENSIONS[spec.kind.dimension].si[0] if spec.default == 0.0 else spec.kind.unit.replace("1", "")
+    return f"{spec.default:g} {unit}".strip()
 
 
 @cache
