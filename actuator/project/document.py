@@ -14,9 +14,9 @@ from typing import Any
 
 from actuator.errors import InputError, Problem
 from actuator.project import paths
+from actuator.project.fields import find
 from actuator.project.files import write_text
 from actuator.project.paths import Steps, refuse, steps_of
-from actuator.project.schema import find
 from actuator.project.template import start
 from actuator.unit_table import System
 

@@ -7,8 +7,8 @@ from typing import Any
 
 from actuator import kinds
 from actuator.parts import Actuator, Friction, Load, Machine, ProcessForce, Require, Site, Throttle, Valve
+from actuator.project.fields import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
 from actuator.project.paths import Steps
-from actuator.project.schema import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
 from actuator.project.walk import Values, Walk
 
 RESERVED = "supply"

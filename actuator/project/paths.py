@@ -8,7 +8,7 @@ from functools import lru_cache
 from typing import Any
 
 from actuator.errors import InputError, Problem
-from actuator.project.schema import ROOT, fields
+from actuator.project.fields import ROOT, fields
 
 Steps = tuple[str | int, ...]
 """Keys and 1-based numbers, ``("machine", 1, "name")``."""

@@ -10,8 +10,8 @@ import tomlkit
 from tomlkit.exceptions import TOMLKitError
 from tomlkit.items import AoT, InlineTable
 
+from actuator.project.fields import find
 from actuator.project.paths import Steps, steps_of
-from actuator.project.schema import find
 
 
 def rewritten(source: str, edits: Mapping[str, str], tree: Mapping[str, Any]) -> str:

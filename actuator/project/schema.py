@@ -1,141 +1,18 @@
-"""What a document may hold: every key, from the parts' own declarations.
+"""What a document may hold, as a form and as JSON Schema.
 
-Form, file, ``--set`` and JSON Schema read the same fields, so they cannot drift.
+Both are made from the parts' own declarations, as file and ``--set`` are, so they cannot drift.
 """
 
 from __future__ import annotations
 
-from collections.abc import Mapping
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from functools import cache
 from typing import Any
 
-from actuator import kinds
-from actuator.kinds import Entry, FieldSpec, Kind, fields_of
+from actuator.kinds import FieldSpec, Kind
 from actuator.parts import Actuator, Compressor, Machine, Money, Project, Site, Valve
+from actuator.project.fields import ALTERNATES, FAMILIES, FORMAT, PROCESS_FORCE, ROOT, fields
 from actuator.unit_table import DIMENSIONS
-
-FORMAT = 1
-ROOT: Any = Project
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Alternate:
-    """Another way to state a valve path's conductance.
-
-    Attributes
-    ----------
-    suffix : str
-        Ends the key in place of ``c``.
-    kind : Kind
-        What is typed.
-    label, help, example : str
-        As in :class:`~actuator.kinds.Entry`.
-    """
-
-    suffix: str
-    kind: Kind
-    label: str
-    help: str
-    example: str
-
-
-ALTERNATES = (
-    Alternate(
-        suffix="cv",
-        kind=kinds.kind_of(kinds.PositiveNumber),
-        label="Cv",
-        help="US flow coefficient, in place of C.",
-        example="0.5",
-    ),
-    Alternate(
-        suffix="kv",
-        kind=kinds.kind_of(kinds.PositiveNumber),
-        label="Kv",
-        help="Metric flow coefficient in m3/h, in place of C.",
-        example="0.43",
-    ),
-    Alternate(
-        suffix="qn",
-        kind=replace(kinds.kind_of(kinds.FlowANR), at_least=None, above=0.0),
-        label="nominal flow",
-        help="Flow from 6 to 5 bar gauge, in place of C.",
-        example="500 L/min ANR",
-    ),
-    Alternate(
-        suffix="s",
-        kind=kinds.kind_of(kinds.Area),
-        label="effective area",
-        help="Effective area S, in place of C.",
-        example="10 mm2",
-    ),
-)
-PROCESS_FORCE = '[{ from = "380 mm", to = "400 mm", force = "300 N" }]'
-"""How the list of process forces is typed."""
-FAMILIES = ("supply", "exhaust")
-"""Paths of a valve that have alternates: ``supply_c``, ``supply_cv``, ..."""
-
-_FORMAT_SPEC = FieldSpec(
-    name="format",
-    key="format",
-    kind=kinds.kind_of(kinds.Count),
-    entry=Entry("Format", "Version of the document's format.", example="1"),
-    choices=(),
-    part=None,
-    is_list=False,
-    is_text=False,
-    is_count=True,
-    optional=False,
-    required=True,
-    default=None,
-)
-
-
-@cache
-def fields(part: Any) -> Mapping[str, FieldSpec]:
-    """Fields of a part by document key, alternates and the format number included."""
-    found = {spec.key: spec for spec in fields_of(part) if spec.entry is not None}
-    if part is ROOT:
-        return {"format": _FORMAT_SPEC, **found}
-    if part is Valve:
-        return {key: spec for own in found.values() for key, spec in _with_alternates(own).items()}
-    return found
-
-
-def _with_alternates(spec: FieldSpec) -> dict[str, FieldSpec]:
-    """A field and, for a path's conductance, its alternates behind it."""
-    family, _, last = spec.key.rpartition("_")
-    if last != "c" or family not in FAMILIES:
-        return {spec.key: spec}
-    return {spec.key: spec} | {
-        f"{family}_{way.suffix}": replace(
-            spec,
-            name=f"{family}_{way.suffix}",
-            key=f"{family}_{way.suffix}",
-            kind=way.kind,
-            entry=Entry(f"{family.capitalize()} {way.label}", way.help, example=way.example),
-            optional=True,
-            required=False,
-            default=None,
-        )
-        for way in ALTERNATES
-    }
-
-
-def find(steps: tuple[str | int, ...]) -> FieldSpec | None:
-    """Field at a path in steps; the list's own field for ``(..., "process_force")`` and for its items."""
-    part: Any | None = ROOT
-    spec: FieldSpec | None = None
-    for step in steps:
-        if isinstance(step, int):
-            if spec is None or not spec.is_list:
-                return None
-            continue
-        spec = fields(part).get(step) if part is not None else None
-        if spec is None:
-            return None
-        part = spec.part
-    return spec
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -238,3 +115,95 @@ def sheet(machine: int, actuator: int) -> tuple[SheetGroup, ...]:
         SheetGroup(title="Compressor", fields=_rows(Compressor, "plant.compressor.1.")),
         SheetGroup(title="Money", fields=_rows(Money, "money.")),
     )
+
+
+def json_schema() -> dict[str, Any]:
+    """JSON Schema (draft 2020-12) of the document.
+
+    Returns
+    -------
+    dict
+        Says which keys there are, which are needed, which words and numbers they take; whether the text of
+        a quantity can be read is for :func:`~actuator.project.validate.validate` to say.
+    """
+    return {
+        "$schema": "https://json-schema.org/draft/2020-12/schema",
+        "title": f"Pneumatic actuator document, format {FORMAT}",
+        **_object(ROOT),
+    }
+
+
+def _object(part: Any) -> dict[str, Any]:
+    """Schema of one table."""
+    known = fields(part)
+    needed = [key for key, spec in known.items() if _is_needed(part, key, spec)]
+    made: dict[str, Any] = {
+        "type": "object",
+        "properties": {key: _property(spec) for key, spec in known.items()},
+        "required": needed,
+        "additionalProperties": False,
+    }
+    if part is Valve:
+        made["allOf"] = [_one_of_family(family) for family in FAMILIES]
+    return made
+
+
+def _is_needed(part: Any, key: str, spec: FieldSpec) -> bool:
+    """Whether the table does not check without the key."""
+    if part is Valve and key == "supply_c":
+        return False
+    if part is Actuator and spec.part is not None:
+        return key in ("load", "valve")
+    return spec.required or key in ("machine", "actuator")
+
+
+def _one_of_family(family: str) -> dict[str, Any]:
+    """Exactly one way to state the supply path, at most one for the exhaust path."""
+    keys = [f"{family}_c", *(f"{family}_{way.suffix}" for way in ALTERNATES)]
+    ways: list[dict[str, Any]] = [{"required": [key]} for key in keys]
+    if family == "exhaust":
+        ways.append({"not": {"anyOf": [{"required": [key]} for key in keys]}})
+    return {"oneOf": ways}
+
+
+def _property(spec: FieldSpec) -> dict[str, Any]:
+    """Schema of one key."""
+    entry = spec.entry
+    assert entry is not None
+    default = default_text(spec)
+    about: dict[str, Any] = {
+        "title": entry.label,
+        "description": entry.help + (f" Left out: {default}." if default else ""),
+    }
+    if spec.key == "format":
+        return {**about, "const": FORMAT}
+    if spec.part is not None and spec.is_list:
+        least = {} if spec.key == "process_force" else {"minItems": 1}
+        most = {"maxItems": 1} if spec.key == "compressor" else {}
+        return {**about, "type": "array", "items": _object(spec.part), **least, **most}
+    if spec.part is not None:
+        return {**about, **_object(spec.part)}
+    if spec.choices:
+        return {**about, "enum": list(spec.choices)}
+    if spec.kind is None:
+        return {**about, "type": "string", "examples": [entry.example.strip('"')]}
+    return {**about, **_quantity(spec.kind, entry.example)}
+
+
+def _quantity(kind: Kind, example: str) -> dict[str, Any]:
+    """Schema of a quantity: text, or a plain number where the dimension is 1."""
+    dimension = DIMENSIONS[kind.dimension]
+    made: dict[str, Any] = {"type": "string", "pattern": r"^\s*[-+\u2212]?\.?[0-9]"}
+    if dimension.bare:
+        made["type"] = ["integer" if kind.dimension == "count" else "number", "string"]
+        limits = {
+            "exclusiveMinimum": kind.above,
+            "minimum": kind.at_least,
+            "exclusiveMaximum": kind.below,
+            "maximum": kind.at_most,
+        }
+        made |= {key: value for key, value in limits.items() if value is not None}
+    return {**made, "examples": [example or dimension.example]}
+
+
+__all__ = ["ALTERNATES", "FAMILIES", "SheetField", "SheetGroup", "default_text", "json_schema", "sheet"]

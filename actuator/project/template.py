@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from actuator.project.schema import PROCESS_FORCE, SheetField, sheet
+from actuator.project.fields import PROCESS_FORCE
+from actuator.project.schema import SheetField, sheet
 from actuator.unit_table import DIMENSIONS, System
 from actuator.units import Reading, read, show
 

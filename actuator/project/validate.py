@@ -9,9 +9,10 @@ from actuator.errors import InputError, Problem
 from actuator.parts import Compressor, Money, Plant, Project, Site
 from actuator.project import paths
 from actuator.project.document import Document
+from actuator.project.fields import FORMAT, fields
 from actuator.project.machines import machines
 from actuator.project.paths import Steps
-from actuator.project.schema import FORMAT, fields, sheet
+from actuator.project.schema import sheet
 from actuator.project.walk import Values, Walk
 from actuator.units import Reading
 

@@ -10,9 +10,9 @@ from actuator.errors import InputError, Problem
 from actuator.kinds import FieldSpec
 from actuator.project import paths
 from actuator.project.document import Document, told
+from actuator.project.fields import fields
 from actuator.project.locate import line_of
 from actuator.project.paths import Steps
-from actuator.project.schema import fields
 from actuator.units import Reading, UnitFault, read, show
 
 Values = dict[str, Any]
