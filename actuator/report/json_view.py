@@ -113,9 +113,7 @@ def _machine(analysis: Analysis, number: int, histories: bool) -> Tree:
     return {
         "name": machine.part.name,
         "quantity": machine.part.quantity,
-        "actuators": [
-            _actuator(At(analysis, number, index), histories) for index in range(len(machine.actuators))
-        ],
+        "actuators": [_actuator(At(analysis, number, index), histories) for index in range(len(machine.actuators))],
         **_figures(At(analysis, number), money=False),
     }
 

@@ -78,9 +78,7 @@ def find(analysis: Analysis, name: str) -> Named | NotFound:
     """
     every = list(all_figures(analysis))
     whole = [item for item in every if name in item.spellings]
-    tails = whole or [
-        item for item in every if any(spelling.endswith("." + name) for spelling in item.spellings)
-    ]
+    tails = whole or [item for item in every if any(spelling.endswith("." + name) for spelling in item.spellings)]
     if len(tails) == 1:
         return tails[0]
     if tails:

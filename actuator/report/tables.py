@@ -93,17 +93,12 @@ def table(title: str, figures: Sequence[Figure], at: At, shown: Shown) -> list[s
     seen: list[tuple[str, Cell]] = []
     for row in rows.values():
         cells = [cell(figure, at, shown) for figure in row]
-        seen += [
-            (f"{figure.label} {figure.direction}".rstrip(), item)
-            for figure, item in zip(row, cells, strict=True)
-        ]
+        seen += [(f"{figure.label} {figure.direction}".rstrip(), item) for figure, item in zip(row, cells, strict=True)]
         lines.append(line(row[0].label, [item.number for item in cells], cells[0].unit))
     return lines + list(reasons(seen))
 
 
-def share_table(
-    title: str, items: Sequence[tuple[Figure, Figure | None]], at: At, shown: Shown, of: str
-) -> list[str]:
+def share_table(title: str, items: Sequence[tuple[Figure, Figure | None]], at: At, shown: Shown, of: str) -> list[str]:
     """Figures with their shares of the first.
 
     Parameters

@@ -9,6 +9,7 @@ from actuator.answer import Answer
 from actuator.cautions import DECIDE
 from actuator.errors import Problem, Refusal
 from actuator.report.figures import FIGURES, At, Figure, completed, flow
+from actuator.report.names import all_figures
 from actuator.report.shown import Shown, shown_for
 from actuator.report.tables import WIDTH, cell, groups, line, share_table, table, wrapped
 from actuator.report.verdicts import verdict_line
@@ -180,3 +181,26 @@ def as_text(answer: Answer, system: System = "si") -> str:
     lines += _words("Remarks", analysis.remarks)
     lines += ["", *wrapped(ESTIMATE, "", "")]
     return "\n".join(lines).lstrip("\n") + "\n"
+
+
+def figure_list(answer: Answer, system: System = "si") -> str:
+    """Names of all figures with their values: what can be explained.
+
+    Parameters
+    ----------
+    answer : Answer
+        With an analysis.
+    system : {"si", "us"}, optional
+        Units to show in.
+
+    Returns
+    -------
+    str
+        One figure a line, ends with a newline.
+    """
+    if answer.analysis is None or answer.project is None:
+        raise LookupError("the document has problems")
+    shown = shown_for(answer.project, system)
+    rows = [(item.name, shown.figure(item.figure, item.at)) for item in all_figures(answer.analysis)]
+    width = max(len(name) for name, _ in rows)
+    return "".join(f"{name:<{width}}  {value}\n" for name, value in rows)

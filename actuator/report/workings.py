@@ -183,9 +183,7 @@ def render(found: Working, width: int = 100) -> str:
         value = max(len(item.value) for item in found.inputs)
         for item in found.inputs:
             text = f"{item.name:<{name}}  {item.value:>{value}}  {item.origin}, {item.path}"
-            lines += textwrap.wrap(
-                text, width, initial_indent="  ", subsequent_indent=" " * (name + value + 6)
-            )
+            lines += textwrap.wrap(text, width, initial_indent="  ", subsequent_indent=" " * (name + value + 6))
     lines += ["", "Sources", *_wrapped(found.sources, width)]
     if found.remarks:
         lines += ["", "Remarks", *_wrapped(found.remarks, width)]

@@ -4,9 +4,7 @@ from actuator.report.figures import cycle, flow, forces, money, motion
 from actuator.report.figures.motion import completed
 from actuator.report.figures.registry import At, Direction, Figure, Level, si_unit
 
-ACTUATOR_FIGURES: tuple[Figure, ...] = (
-    motion.FIGURES + cycle.FIGURES + money.ACTUATOR + forces.FIGURES + flow.FIGURES
-)
+ACTUATOR_FIGURES: tuple[Figure, ...] = motion.FIGURES + cycle.FIGURES + money.ACTUATOR + forces.FIGURES + flow.FIGURES
 MACHINE_FIGURES: tuple[Figure, ...] = money.MACHINE
 PROJECT_FIGURES: tuple[Figure, ...] = money.PROJECT
 FIGURES: dict[Level, dict[str, Figure]] = {

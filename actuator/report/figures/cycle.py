@@ -174,8 +174,7 @@ _ITEMS: tuple[tuple[str, str, str, str], ...] = (
     (
         "supply_path",
         "Supply path",
-        "∮ Σθ dt + ∮ ξ dt on the supply side,  θ = R·T₀·|q|·ln(p_u/p_d),  "
-        "ξ = T₀·q·c_p·[T_in/T − 1 − ln(T_in/T)]",
+        "∮ Σθ dt + ∮ ξ dt on the supply side,  θ = R·T₀·|q|·ln(p_u/p_d),  ξ = T₀·q·c_p·[T_in/T − 1 − ln(T_in/T)]",
         "Valve and throttle between supply and chamber, and mixing of that air with the chamber's.",
     ),
     (

@@ -233,9 +233,7 @@ def _indicator(
 
 
 INDICATOR: tuple[Figure, ...] = (
-    _indicator(
-        "cut_off", Share, "Cut-off", "ε = share of the stroke with the supply open", inputs=("cut_off",)
-    ),
+    _indicator("cut_off", Share, "Cut-off", "ε = share of the stroke with the supply open", inputs=("cut_off",)),
     _indicator(
         "work",
         Energy,

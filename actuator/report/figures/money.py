@@ -37,9 +37,7 @@ _COST_FORMULA: dict[Level, dict[str, str]] = {
         "cost_year": "electricity a year × energy price",
         "carbon_year": "electricity a year × carbon intensity",
     },
-    "machine": dict.fromkeys(
-        ("energy_year", "cost_year", "carbon_year"), "sum over its actuators × quantity"
-    ),
+    "machine": dict.fromkeys(("energy_year", "cost_year", "carbon_year"), "sum over its actuators × quantity"),
     "project": {name: "sum over the machines" for name, _, _ in _COSTS},
 }
 _RATES = {"cost_year": ("money.energy",), "carbon_year": ("money.carbon",)}

@@ -1,0 +1,106 @@
+"""Writing to a stream that may be closed, or that cannot show every character."""
+
+from __future__ import annotations
+
+import os
+from contextlib import suppress
+from typing import TextIO
+
+_SPELLED = str.maketrans(
+    {
+        "·": "*",
+        "×": "x",
+        "−": "-",
+        "±": "+/-",
+        "√": "sqrt",
+        "∫": "integral ",
+        "∮": "cycle integral ",
+        "Σ": "sum ",
+        "Δ": "d",
+        "½": "1/2",
+        "≈": "~",
+        "≤": "<=",
+        "≥": ">=",
+        "²": "^2",
+        "³": "^3",
+        "⁴": "^4",
+        "ᶻ": "^z",
+        "₀": "0",
+        "₁": "1",
+        "₂": "2",
+        "₃": "3",
+        "ᵢ": "i",
+        "α": "alpha",
+        "γ": "gamma",
+        "ε": "epsilon",
+        "η": "eta",
+        "θ": "theta",
+        "κ": "kappa",
+        "λ": "lambda",
+        "μ": "mu",
+        "ξ": "xi",
+        "π": "pi",
+        "ρ": "rho",
+        "σ": "sigma",
+        "φ": "phi",
+        "ψ": "psi",
+    }
+)
+"""Signs of the formulas in ASCII."""
+
+
+def encoding_of(stream: TextIO) -> str:
+    """Encoding of a stream; UTF-8 where it has none."""
+    return getattr(stream, "encoding", None) or "utf-8"
+
+
+def is_unicode(stream: TextIO) -> bool:
+    """Whether a stream takes every character."""
+    return encoding_of(stream).lower().replace("-", "").replace("_", "").startswith("utf")
+
+
+def fitted(text: str, encoding: str) -> str:
+    """Text that an encoding can take: signs of the formulas spelled out, the rest as escapes.
+
+    Parameters
+    ----------
+    text : str
+    encoding : str
+        Name of a codec.
+
+    Returns
+    -------
+    str
+        The same text where the encoding takes it.
+    """
+    try:
+        text.encode(encoding)
+    except UnicodeEncodeError:
+        if not encoding.lower().startswith("utf"):
+            text = text.translate(_SPELLED)
+        return text.encode(encoding, "backslashreplace").decode(encoding)
+    return text
+
+
+def emit(text: str, stream: TextIO) -> None:
+    """Write text and flush it; a reader that has gone away is no error.
+
+    Parameters
+    ----------
+    text : str
+    stream : TextIO
+        Standard output or standard error.
+    """
+    try:
+        stream.write(fitted(text, encoding_of(stream)))
+        stream.flush()
+    except BrokenPipeError:
+        silence(stream)
+
+
+def silence(stream: TextIO) -> None:
+    """Point a stream whose reader has gone at nothing, so that closing it cannot fail."""
+    with suppress(OSError, ValueError):
+        sink = os.open(os.devnull, os.O_WRONLY)
+        os.dup2(sink, stream.fileno())
+        os.close(sink)
