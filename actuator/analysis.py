@@ -3,201 +3,64 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass
 
-from actuator.errors import Refusal
-from actuator.parts import Actuator, Machine, Project
-from actuator.stroke.result import Path, StrokeResult
+import numpy as np
 
+from actuator.air.gas import DRY_DENSITY_ANR
+from actuator.cautions import Caution, cautions
+from actuator.energy.compressor import supply_work
+from actuator.energy.consumption import ChamberTurn, air_difference, settled_air, textbook_air
+from actuator.energy.cost import YearlyCost, yearly_cost
+from actuator.energy.demand import demand
+from actuator.energy.indicator import Indicator, ideal_indicator
+from actuator.errors import Cancelled, Refusal
+from actuator.judge import judge
+from actuator.mechanics.buckling import column, end_factor, longest_stroke
+from actuator.mechanics.force import (
+    force_reserve,
+    load_ratio,
+    opposing_extend,
+    opposing_retract,
+    required_bore,
+    theoretical_extend,
+    theoretical_retract,
+)
+from actuator.parts import Actuator, Machine, Project, Site
+from actuator.results import (
+    ActuatorResult,
+    Air,
+    Analysis,
+    Criterion,
+    Demand,
+    MachineResult,
+    Rod,
+    Static,
+    Supply,
+)
+from actuator.stroke.result import StrokeResult
+from actuator.stroke.simulate import flow_paths, simulate
 
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Static:
-    """Forces without motion."""
+AirCost = YearlyCost
+__all__ = [
+    "ActuatorResult",
+    "Air",
+    "AirCost",
+    "Analysis",
+    "Caution",
+    "Criterion",
+    "Demand",
+    "Indicator",
+    "MachineResult",
+    "Rod",
+    "Static",
+    "Supply",
+    "YearlyCost",
+    "analyse",
+    "never",
+]
 
-    theoretical_extend: float
-    """(p_s - p0)·A_cap. [N]"""
-    theoretical_retract: float
-    """(p_s - p0)·A_rod, at the return pressure where there is one. [N]"""
-    load_extend: float
-    """Largest force that opposes extending, worst position, without inertia and cylinder friction. [N]"""
-    load_retract: float
-    """The same for retracting. [N]"""
-    load_ratio_extend: float
-    """Opposing load over theoretical force. [1]"""
-    load_ratio_retract: float
-    force_reserve_extend: float | Refusal
-    """(theoretical - running friction - load)/load. [1]"""
-    force_reserve_retract: float | Refusal
-    required_bore: float | Refusal
-    """Smallest bore that carries load, friction and wanted reserve both ways, rod in proportion. [m]"""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Rod:
-    """The rod as a column."""
-
-    buckling_load: float | Refusal
-    """[N]"""
-    buckling_safety: float | Refusal
-    """Buckling load over the largest push. [1]"""
-    slenderness: float
-    """[1]"""
-    rule: str
-    """``"Euler"`` or ``"Johnson"``."""
-    longest_stroke: float | Refusal
-    """Longest stroke that keeps the wanted safety (4 where none is asked). [m]"""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Air:
-    """Air of one cycle: what the simulation draws, beside the two hand figures."""
-
-    air_drawn: float
-    """[kg], dry air."""
-    air_drawn_anr: float
-    """[m³ ANR]"""
-    textbook_anr: float
-    """Swept volumes at supply pressure, no dead volume. [m³ ANR]"""
-    settled_anr: float
-    """Swept and dead volumes filled from ambient to supply pressure. [m³ ANR]"""
-    difference: str
-    """Why the first differs from the last two, in words with numbers."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Indicator:
-    """Ideal indicator diagram of one stroke (extending), and what the ideal would need."""
-
-    cut_off: float
-    """[1]"""
-    work: float
-    """Per stroke, out and back. [J]"""
-    mean_effective_pressure: float
-    """[Pa]"""
-    air: float
-    """Per stroke, isothermal admission. [kg]"""
-    air_adiabatic: float
-    """Per stroke, adiabatic admission. [kg]"""
-    work_per_kg: float
-    """[J/kg]"""
-    unused_share: float
-    """Share of the supplied exergy that a full-pressure stroke leaves unused. [1]"""
-    volume: tuple[float, ...]
-    """Corner and curve points of the diagram, closed loop. [m³]"""
-    pressure: tuple[float, ...]
-    """Absolute, same length as ``volume``. [Pa]"""
-    volume_retract: tuple[float, ...]
-    """The same for the rod side. [m³]"""
-    pressure_retract: tuple[float, ...]
-    """[Pa]"""
-    remarks: tuple[str, ...]
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Criterion:
-    """One requirement, judged."""
-
-    name: str
-    direction: str
-    """``"extend"``, ``"retract"`` or empty."""
-    wanted: float
-    got: float | Refusal
-    unit: str
-    """SI unit of wanted and got."""
-    margin: float | Refusal
-    """Share of the wanted, positive is good. [1]"""
-    verdict: str
-    """``"met"``, ``"failed"`` or ``"refused"``."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Caution:
-    """What can hurt, with its source."""
-
-    path: str
-    text: str
-    source: str
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class AirCost:
-    """Energy, money and carbon of a year."""
-
-    energy_year: float
-    """Electricity. [J]"""
-    cost_year: float
-    """In the document's currency."""
-    carbon_year: float
-    """[kg]"""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
-class ActuatorResult:
-    """Everything about one actuator."""
-
-    part: Actuator
-    static: Static
-    rod: Rod
-    indicator: Indicator
-    paths: tuple[Path, ...]
-    stroke: StrokeResult | Refusal
-    air: Air | Refusal
-    cost: AirCost | Refusal
-    """Of one machine's actuator, a year."""
-    criteria: tuple[Criterion, ...]
-    cautions: tuple[Caution, ...]
-    remarks: tuple[str, ...]
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Demand:
-    """Air that the machine (one of its quantity) draws."""
-
-    mean_anr: float | Refusal
-    """Over the cycle. [m³/s ANR]"""
-    peak_anr: float | Refusal
-    """Highest mean over any 0.5 s of the cycle, all actuators together. [m³/s ANR]"""
-    per_cycle_anr: float | Refusal
-    """[m³ ANR]"""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
-class MachineResult:
-    """A machine's actuators and their sum."""
-
-    part: Machine
-    actuators: tuple[ActuatorResult, ...]
-    demand: Demand
-    cost: AirCost | Refusal
-    """Of all machines of this kind, ``quantity`` times one."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Supply:
-    """From the meter to a kilogram of compressed air."""
-
-    specific_work: float
-    """Work on the air by the model of the compressor, before drive and motor. [J/kg dry air]"""
-    specific_energy: float
-    """Electricity per mass of dry air. [J/kg]"""
-    energy_per_anr: float
-    """[J/m³ ANR]"""
-    price_per_anr: float
-    """In the document's currency, per m³ ANR."""
-    how: str
-    """``"package power"`` or ``"stages and efficiencies"``."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
-class Analysis:
-    """All results of one project."""
-
-    project: Project
-    machines: tuple[MachineResult, ...]
-    supply: Supply
-    cost: AirCost | Refusal
-    """Of all machines."""
-    remarks: tuple[str, ...]
+BUCKLING_SAFETY = 4.0
+"""Safety that the longest stroke is given for where none is asked: common practice (3.5 to 5), no source. [1]"""
 
 
 def never() -> bool:
@@ -205,6 +68,304 @@ def never() -> bool:
     return False
 
 
+def static_forces(actuator: Actuator, machine: Machine, site: Site) -> Static:
+    """Forces of an actuator without motion, load ratio, reserve and the bore that would do."""
+    load, p0, p_extend = actuator.load, site.ambient_pressure, machine.supply_pressure
+    p_retract = actuator.return_pressure or p_extend
+    push = theoretical_extend(p_extend, p0, actuator.bore)
+    pull = theoretical_retract(p_retract, p0, actuator.bore, actuator.rod)
+    out = opposing_extend(
+        mass=load.mass,
+        inclination=load.inclination,
+        guide_friction=load.guide_friction,
+        extend_force=load.extend_force,
+        constant_force=load.constant_force,
+        process=[(item.start, item.end, item.force) for item in load.process_force],
+    )
+    back = opposing_retract(
+        mass=load.mass,
+        inclination=load.inclination,
+        guide_friction=load.guide_friction,
+        retract_force=load.retract_force,
+        constant_force=load.constant_force,
+    )
+    running = actuator.friction.coulomb
+    return Static(
+        theoretical_extend=push,
+        theoretical_retract=pull,
+        load_extend=out,
+        load_retract=back,
+        load_ratio_extend=load_ratio(out, push),
+        load_ratio_retract=load_ratio(back, pull),
+        force_reserve_extend=force_reserve(push, running, out),
+        force_reserve_retract=force_reserve(pull, running, back),
+        required_bore=required_bore(
+            p_extend=p_extend,
+            p_retract=p_retract,
+            p_ambient=p0,
+            load_extend=out,
+            load_retract=back,
+            reserve=actuator.require.force_reserve or 0.0,
+            friction_share=running / push,
+            rod_ratio=actuator.rod / actuator.bore,
+        ),
+    )
+
+
+def rod_column(actuator: Actuator, static: Static) -> Rod:
+    """Buckling of the extended rod under the largest push, (p_s - p0)·A_cap."""
+    factor = end_factor(actuator.mounting, actuator.rod_end)
+    longest = longest_stroke(
+        rod=actuator.rod,
+        mounting=actuator.mounting,
+        rod_end=actuator.rod_end,
+        stroke=actuator.stroke,
+        closed_length=actuator.closed_length,
+        push=static.theoretical_extend,
+        safety=actuator.require.buckling_safety or BUCKLING_SAFETY,
+    )
+    if isinstance(factor, Refusal):
+        return Rod(buckling_load=factor, buckling_safety=factor, slenderness=factor, rule="", longest_stroke=longest)
+    found = column(actuator.rod, factor * (actuator.closed_length + actuator.stroke))
+    return Rod(
+        buckling_load=found.load,
+        buckling_safety=found.load / static.theoretical_extend,
+        slenderness=found.slenderness,
+        rule=found.rule,
+        longest_stroke=longest,
+    )
+
+
+def air_of(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult) -> Air:
+    """Air of a cycle as simulated, beside the two hand figures, and why they differ."""
+    p_extend = machine.supply_pressure
+    p_retract = actuator.return_pressure or p_extend
+    swept_cap = actuator.area_cap * actuator.stroke
+    swept_rod = actuator.area_rod * actuator.stroke
+    drawn = stroke.extend.air_drawn + stroke.retract.air_drawn
+    textbook = textbook_air(
+        p_extend=p_extend,
+        p_retract=p_retract,
+        temp_supply=machine.supply_temperature,
+        swept_cap=swept_cap,
+        swept_rod=swept_rod,
+    )
+    settled = settled_air(
+        p_extend=p_extend,
+        p_retract=p_retract,
+        p_ambient=site.ambient_pressure,
+        temp_supply=machine.supply_temperature,
+        swept_cap=swept_cap,
+        swept_rod=swept_rod,
+        dead_cap=actuator.dead_volume_cap,
+        dead_rod=actuator.dead_volume_rod,
+    )
+    delay, period = actuator.valve.delay, machine.cycle_time
+    extends, retracts = (
+        int(np.searchsorted(stroke.time, (command + delay) % period))
+        for command in (actuator.extend_at, actuator.retract_at)
+    )
+    cap, rod = (
+        ChamberTurn(
+            p_supply=p_supply,
+            swept=swept,
+            dead=dead,
+            p_full=float(p[full]),
+            temp_full=float(temp[full]),
+            volume_full=float(volume[full]),
+            p_empty=float(p[empty]),
+            temp_empty=float(temp[empty]),
+            volume_empty=float(volume[empty]),
+        )
+        for p_supply, swept, dead, p, temp, volume, full, empty in (
+            (
+                p_extend, swept_cap, actuator.dead_volume_cap,
+                stroke.p_cap, stroke.temp_cap, stroke.volume_cap, retracts, extends,
+            ),
+            (
+                p_retract, swept_rod, actuator.dead_volume_rod,
+                stroke.p_rod, stroke.temp_rod, stroke.volume_rod, extends, retracts,
+            ),
+        )
+    )  # fmt: skip
+    why = air_difference(
+        drawn=drawn,
+        cap=cap,
+        rod=rod,
+        p_ambient=site.ambient_pressure,
+        temp_supply=machine.supply_temperature,
+        cut_off=actuator.cut_off,
+    )
+    return Air(
+        air_drawn=drawn,
+        air_drawn_anr=drawn / DRY_DENSITY_ANR,
+        textbook_anr=textbook / DRY_DENSITY_ANR,
+        settled_anr=settled / DRY_DENSITY_ANR,
+        difference=why.text,
+    )
+
+
+def _same_motion(machine: Machine, other: Machine) -> bool:
+    """Whether two machines give their actuators the same supply and cycle."""
+    return (machine.supply_pressure, machine.supply_temperature, machine.cycle_time) == (
+        other.supply_pressure,
+        other.supply_temperature,
+        other.cycle_time,
+    )
+
+
+def _known_strokes(
+    project: Project, machine: Machine, previous: Analysis | None
+) -> list[tuple[Actuator, StrokeResult]]:
+    """Strokes of an earlier analysis that were simulated for this machine's supply, cycle and site."""
+    if previous is None or previous.project.site != project.site:
+        return []
+    return [
+        (result.part, result.stroke)
+        for old in previous.machines
+        if _same_motion(machine, old.part)
+        for result in old.actuators
+        if isinstance(result.stroke, StrokeResult)
+    ]
+
+
+def _actuator(
+    actuator: Actuator, machine: Machine, project: Project, supply: Supply | Refusal, stroke: StrokeResult | Refusal
+) -> ActuatorResult:
+    site = project.site
+    static = static_forces(actuator, machine, site)
+    rod = rod_column(actuator, static)
+    air = air_of(actuator, machine, site, stroke) if isinstance(stroke, StrokeResult) else stroke
+    return ActuatorResult(
+        part=actuator,
+        static=static,
+        rod=rod,
+        indicator=ideal_indicator(
+            actuator,
+            p_supply=machine.supply_pressure,
+            temp_supply=machine.supply_temperature,
+            p_ambient=site.ambient_pressure,
+            temp_ambient=site.ambient_temperature,
+        ),
+        paths=flow_paths(actuator),
+        stroke=stroke,
+        air=air,
+        cost=_cost(air if isinstance(air, Refusal) else air.air_drawn, machine, project, supply),
+        criteria=judge(actuator, static, rod, stroke),
+        cautions=cautions(actuator, machine, site, stroke),
+        remarks=stroke.remarks if isinstance(stroke, StrokeResult) else (),
+    )
+
+
+def _cost(
+    air: float | Refusal, machine: Machine, project: Project, supply: Supply | Refusal, quantity: int = 1
+) -> YearlyCost | Refusal:
+    """Cost of a year of a cycle's air, for ``quantity`` machines."""
+    if isinstance(air, Refusal):
+        return air
+    if isinstance(supply, Refusal):
+        return supply
+    return yearly_cost(
+        air * quantity,
+        machine.cycles_per_year,
+        supply.work.specific_energy,
+        energy_price=project.money.energy,
+        carbon_intensity=project.money.carbon,
+    )
+
+
+def _machine(
+    machine: Machine, project: Project, supply: Supply | Refusal, results: tuple[ActuatorResult, ...]
+) -> MachineResult:
+    lost = next((item.stroke for item in results if isinstance(item.stroke, Refusal)), None)
+    if lost is not None or not results:
+        why = lost if lost is not None else Refusal("the machine has no actuator")
+        return MachineResult(
+            part=machine,
+            actuators=results,
+            demand=Demand(mean_anr=why, peak_anr=why, per_cycle_anr=why),
+            cost=why,
+        )
+    histories = [
+        (item.stroke.time, item.stroke.flow_supply) for item in results if isinstance(item.stroke, StrokeResult)
+    ]
+    drawn = sum(item.air.air_drawn for item in results if isinstance(item.air, Air))
+    flow = demand(histories, machine.cycle_time)
+    return MachineResult(
+        part=machine,
+        actuators=results,
+        demand=Demand(
+            mean_anr=drawn / machine.cycle_time / DRY_DENSITY_ANR,
+            peak_anr=flow.peak / DRY_DENSITY_ANR,
+            per_cycle_anr=drawn / DRY_DENSITY_ANR,
+        ),
+        cost=_cost(drawn, machine, project, supply, machine.quantity),
+    )
+
+
 def analyse(project: Project, previous: Analysis | None = None, cancelled: Callable[[], bool] = never) -> Analysis:
-    """Compute everything; placeholder signature while the rooms are built."""
-    raise RuntimeError("analysis is being built")
+    """Compute everything that a project describes.
+
+    Parameters
+    ----------
+    project : Project
+    previous : Analysis, optional
+        An earlier analysis: strokes whose inputs are equal are taken over.
+    cancelled : callable, optional
+        Asked before each actuator; true ends the work.
+
+    Returns
+    -------
+    Analysis
+        A figure that cannot be had is a :class:`Refusal` in its place; the rest is computed all the same.
+
+    Raises
+    ------
+    Cancelled
+        When ``cancelled()`` became true.
+    """
+    work = supply_work(project.plant.compressors[0], project.site)
+    supply: Supply | Refusal
+    if isinstance(work, Refusal):
+        supply = work
+    else:
+        per_anr = work.specific_energy * DRY_DENSITY_ANR
+        supply = Supply(work=work, energy_per_anr=per_anr, price_per_anr=per_anr * project.money.energy)
+    machines = []
+    for machine in project.machines:
+        known = _known_strokes(project, machine, previous)
+        results = []
+        for actuator in machine.actuators:
+            if cancelled():
+                raise Cancelled("cancelled")
+            stroke = next((old for part, old in known if part == actuator), None)
+            results.append(
+                _actuator(actuator, machine, project, supply, stroke or simulate(actuator, machine, project.site))
+            )
+        machines.append(_machine(machine, project, supply, tuple(results)))
+    costs = [item.cost for item in machines]
+    lost = next((item for item in costs if isinstance(item, Refusal)), None)
+    known_costs = [item for item in costs if isinstance(item, YearlyCost)]
+    return Analysis(
+        project=project,
+        machines=tuple(machines),
+        supply=supply,
+        cost=lost
+        if lost is not None
+        else YearlyCost(
+            energy_year=sum(item.energy_year for item in known_costs),
+            cost_year=sum(item.cost_year for item in known_costs),
+            carbon_year=sum(item.carbon_year for item in known_costs),
+        ),
+        remarks=_remarks(tuple(machines)),
+    )
+
+
+def _remarks(machines: tuple[MachineResult, ...]) -> tuple[str, ...]:
+    """What holds for the whole answer."""
+    strokes = [item.stroke for machine in machines for item in machine.actuators]
+    if any(isinstance(item, StrokeResult) and item.engine == "interpreted" for item in strokes):
+        from actuator.stroke.compiled import remark
+
+        return (f"strokes computed by the interpreted kernel{': ' + remark() if remark() else ''}",)
+    return ()

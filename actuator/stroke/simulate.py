@@ -15,7 +15,7 @@ from actuator.stroke import layout as at
 from actuator.stroke.assemble import assemble
 from actuator.stroke.compiled import Engine
 from actuator.stroke.compiled import engine as pick_engine
-from actuator.stroke.cycle import process_at
+from actuator.stroke.events import process_at
 from actuator.stroke.result import Path, StrokeResult
 
 ROUGH = 1e-4

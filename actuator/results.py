@@ -1,0 +1,149 @@
+"""What an analysis holds: the results of every section, frozen."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from actuator.cautions import Caution
+from actuator.energy.compressor import SupplyWork
+from actuator.energy.cost import YearlyCost
+from actuator.energy.indicator import Indicator
+from actuator.errors import Refusal
+from actuator.parts import Actuator, Machine, Project
+from actuator.stroke.result import Path, StrokeResult
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Static:
+    """Forces without motion."""
+
+    theoretical_extend: float
+    """(p_s - p0)·A_cap. [N]"""
+    theoretical_retract: float
+    """(p_s - p0)·A_rod, at the return pressure where there is one. [N]"""
+    load_extend: float
+    """Largest force that opposes extending, worst position, without inertia and cylinder friction. [N]"""
+    load_retract: float
+    """The same for retracting. [N]"""
+    load_ratio_extend: float | Refusal
+    """Opposing load over theoretical force. [1]"""
+    load_ratio_retract: float | Refusal
+    force_reserve_extend: float | Refusal
+    """(theoretical - running friction - load)/load. [1]"""
+    force_reserve_retract: float | Refusal
+    required_bore: float | Refusal
+    """Smallest bore that carries load, friction and wanted reserve both ways, rod in proportion. [m]"""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Rod:
+    """The rod as a column."""
+
+    buckling_load: float | Refusal
+    """[N]"""
+    buckling_safety: float | Refusal
+    """Buckling load over the largest push. [1]"""
+    slenderness: float | Refusal
+    """[1]"""
+    rule: str
+    """``"Euler"`` or ``"Johnson"``."""
+    longest_stroke: float | Refusal
+    """Longest stroke that keeps the wanted safety (4 where none is asked). [m]"""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Air:
+    """Air of one cycle: what the simulation draws, beside the two hand figures."""
+
+    air_drawn: float
+    """[kg], dry air."""
+    air_drawn_anr: float
+    """[m³ ANR]"""
+    textbook_anr: float
+    """Swept volumes at supply pressure, no dead volume. [m³ ANR]"""
+    settled_anr: float
+    """Swept and dead volumes filled from ambient to supply pressure. [m³ ANR]"""
+    difference: str
+    """Why the first differs from the last two, in words with numbers."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Criterion:
+    """One requirement, judged."""
+
+    name: str
+    direction: str
+    """``"extend"``, ``"retract"`` or empty."""
+    wanted: float
+    got: float | Refusal
+    unit: str
+    """SI unit of wanted and got."""
+    margin: float | Refusal
+    """Share of the wanted, positive is good. [1]"""
+    verdict: str
+    """``"met"``, ``"failed"`` or ``"refused"``."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class ActuatorResult:
+    """Everything about one actuator."""
+
+    part: Actuator
+    static: Static
+    rod: Rod
+    indicator: Indicator
+    paths: tuple[Path, ...]
+    stroke: StrokeResult | Refusal
+    air: Air | Refusal
+    cost: YearlyCost | Refusal
+    """Of one machine's actuator, a year."""
+    criteria: tuple[Criterion, ...]
+    cautions: tuple[Caution, ...]
+    remarks: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Demand:
+    """Air that the machine (one of its quantity) draws."""
+
+    mean_anr: float | Refusal
+    """Over the cycle. [m³/s ANR]"""
+    peak_anr: float | Refusal
+    """Highest mean over any 0.5 s of the cycle, all actuators together. [m³/s ANR]"""
+    per_cycle_anr: float | Refusal
+    """[m³ ANR]"""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class MachineResult:
+    """A machine's actuators and their sum."""
+
+    part: Machine
+    actuators: tuple[ActuatorResult, ...]
+    demand: Demand
+    cost: YearlyCost | Refusal
+    """Of all machines of this kind, ``quantity`` times one."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Supply:
+    """From the meter to a kilogram of compressed air."""
+
+    work: SupplyWork
+    """Work and electricity per mass of dry air, and how they were had."""
+    energy_per_anr: float
+    """[J/m³ ANR]"""
+    price_per_anr: float
+    """In the document's currency, per m³ ANR."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class Analysis:
+    """All results of one project."""
+
+    project: Project
+    machines: tuple[MachineResult, ...]
+    supply: Supply | Refusal
+    cost: YearlyCost | Refusal
+    """Of all machines."""
+    remarks: tuple[str, ...]
