@@ -6,9 +6,10 @@ import hashlib
 import os
 import re
 import tomllib
-from dataclasses import dataclass
+from collections.abc import Mapping
+from dataclasses import dataclass, field
 from pathlib import Path
-from typing import Any, cast
+from typing import cast
 
 import platformdirs
 
@@ -29,12 +30,15 @@ class Settings:
         Trade units that figures are shown in.
     theme : str
         Name of the terminal UI's theme; empty for its own choice.
+    keys : mapping of str to str
+        Key by name of an action, in place of the terminal UI's own.
     remarks : tuple of str
         What in the settings file could not be used, and what holds instead.
     """
 
     units: System = "si"
     theme: str = ""
+    keys: Mapping[str, str] = field(default_factory=dict)
     remarks: tuple[str, ...] = ()
 
 
@@ -65,12 +69,13 @@ def load_settings() -> Settings:
     if not isinstance(theme, str):
         remarks.append(f"{path}: theme must be text in quotes; the program's own theme holds")
         theme = ""
-    remarks += [f'{path}: "{key}" is no setting; known are units, theme' for key in sorted(_unknown(table))]
-    return Settings(units=cast("System", units), theme=theme, remarks=tuple(remarks))
-
-
-def _unknown(table: dict[str, Any]) -> set[str]:
-    return set(table) - {"units", "theme"}
+    keys = table.get("keys", {})
+    if not isinstance(keys, dict) or not all(isinstance(key, str) for key in keys.values()):
+        remarks.append(f'{path}: keys must be a table of text, [keys] "edit.undo" = "ctrl+z"; none of it holds')
+        keys = {}
+    unknown = [key for key in table if key not in ("units", "theme", "keys")]
+    remarks += [f'{path}: "{key}" is no setting; known are units, theme, keys' for key in unknown]
+    return Settings(units=cast("System", units), theme=theme, keys=keys, remarks=tuple(remarks))
 
 
 def save_settings(settings: Settings) -> None:
@@ -94,6 +99,10 @@ def save_settings(settings: Settings) -> None:
         kept["theme"] = settings.theme
     elif "theme" in kept:
         del kept["theme"]
+    if settings.keys:
+        kept["keys"] = dict(settings.keys)
+    elif "keys" in kept:
+        del kept["keys"]
     path.parent.mkdir(parents=True, exist_ok=True)
     write_text(path, kept.as_string())
 
@@ -103,22 +112,23 @@ def drafts_folder() -> Path:
     return Path(platformdirs.user_state_dir(APP, appauthor=False)) / "drafts"
 
 
-def draft_path(document_path: Path | None) -> Path:
+def draft_path(key: Path | str | None) -> Path:
     """File that the unsaved text of a document is kept in.
 
     Parameters
     ----------
-    document_path : Path or None
-        Where the document has its file; None for one that has none, which gets a draft per process.
+    key : Path, str or None
+        Where the document has its file; or a text that tells it from others; None for a document that has no
+        file, which gets a draft per process.
 
     Returns
     -------
     Path
         The folder need not exist yet.
     """
-    if document_path is None:
+    if key is None:
         return drafts_folder() / f"untitled-{os.getpid()}.toml"
-    whole = Path(os.path.abspath(document_path))  # noqa: PTH100  # a link keeps its own draft
-    stem = re.sub(r"[^A-Za-z0-9_-]+", "-", whole.stem)[:60] or "document"
+    whole = str(key.absolute()) if isinstance(key, Path) else key
+    stem = re.sub(r"[^A-Za-z0-9_-]+", "-", Path(whole).stem)[:60] or "document"
     mark = hashlib.sha256(os.fsencode(whole)).hexdigest()[:16]
     return drafts_folder() / f"{stem}-{mark}.toml"
