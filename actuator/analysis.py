@@ -268,7 +268,7 @@ def _cost(
     return yearly_cost(
         air * quantity,
         machine.cycles_per_year,
-        supply.work.specific_energy,
+        supply.specific_energy,
         energy_price=project.money.energy,
         carbon_intensity=project.money.carbon,
     )
@@ -330,7 +330,13 @@ def analyse(project: Project, previous: Analysis | None = None, cancelled: Calla
         supply = work
     else:
         per_anr = work.specific_energy * DRY_DENSITY_ANR
-        supply = Supply(work=work, energy_per_anr=per_anr, price_per_anr=per_anr * project.money.energy)
+        supply = Supply(
+            specific_work=work.specific_work,
+            specific_energy=work.specific_energy,
+            energy_per_anr=per_anr,
+            price_per_anr=per_anr * project.money.energy,
+            how=work.how,
+        )
     machines = []
     for machine in project.machines:
         known = _known_strokes(project, machine, previous)

@@ -5,7 +5,6 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from actuator.cautions import Caution
-from actuator.energy.compressor import SupplyWork
 from actuator.energy.cost import YearlyCost
 from actuator.energy.indicator import Indicator
 from actuator.errors import Refusal
@@ -129,12 +128,16 @@ class MachineResult:
 class Supply:
     """From the meter to a kilogram of compressed air."""
 
-    work: SupplyWork
-    """Work and electricity per mass of dry air, and how they were had."""
+    specific_work: float
+    """Work on the air by the model of the compressor, before drive and motor. [J/kg dry air]"""
+    specific_energy: float
+    """Electricity per mass of dry air. [J/kg]"""
     energy_per_anr: float
     """[J/m³ ANR]"""
     price_per_anr: float
     """In the document's currency, per m³ ANR."""
+    how: str
+    """``"package power"`` or ``"stages and efficiencies"``."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)

@@ -159,7 +159,7 @@ class Compressor:
             default="70 %, common practice, no source",
             example="70 %",
         ),
-    ] = 0.70
+    ] = 0.80
     polytropic_efficiency: Annotated[
         PositiveShare | None,
         Entry("Polytropic efficiency", "Of each stage, in place of the isentropic one.", example="75 %"),
