@@ -5,10 +5,10 @@ from __future__ import annotations
 import csv
 import io
 
-from actuator.analysis import Analysis
 from actuator.errors import Refusal
 from actuator.report.figures import si_unit
 from actuator.report.names import all_figures
+from actuator.results import Analysis
 
 HEADER = ("machine", "actuator", "figure", "value", "unit", "refused")
 

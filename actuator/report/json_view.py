@@ -7,10 +7,11 @@ from collections.abc import Sequence
 from dataclasses import fields
 from typing import Any
 
-from actuator.analysis import ActuatorResult, Analysis, Caution, Criterion, MachineResult
 from actuator.answer import Answer
+from actuator.cautions import Caution
 from actuator.errors import Problem, Refusal
 from actuator.report.figures import FIGURES, At, completed
+from actuator.results import ActuatorResult, Analysis, Criterion, MachineResult
 from actuator.stroke.result import StrokeResult
 
 Tree = dict[str, Any]

@@ -6,9 +6,9 @@ import difflib
 from collections.abc import Iterator
 from dataclasses import dataclass
 
-from actuator.analysis import Analysis
 from actuator.project.paths import join
 from actuator.report.figures import FIGURES, At, Figure
+from actuator.results import Analysis
 
 
 @dataclass(frozen=True, slots=True, eq=False)

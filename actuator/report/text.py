@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Sequence
 
-from actuator.analysis import Analysis
 from actuator.answer import Answer
 from actuator.cautions import DECIDE
 from actuator.errors import Problem, Refusal
@@ -13,6 +12,7 @@ from actuator.report.names import all_figures
 from actuator.report.shown import Shown, shown_for
 from actuator.report.tables import WIDTH, cell, groups, line, share_table, table, wrapped
 from actuator.report.verdicts import verdict_line
+from actuator.results import Analysis
 from actuator.unit_table import System
 
 ESTIMATE = "These figures are an engineering estimate from the model that `actuator explain` shows. " + DECIDE
@@ -140,9 +140,11 @@ def _level(title: str, at: At, shown: Shown) -> list[str]:
     return lines
 
 
-def _supply_how(analysis: Analysis) -> str:
+def _supply_words(analysis: Analysis) -> list[str]:
+    if isinstance(analysis.supply, Refusal):
+        return []
     compressor = analysis.project.plant.compressors[0]
-    return f"Electricity for the air: {compressor.name}, by {analysis.supply.how}."
+    return wrapped(f"Electricity for the air: {compressor.name}, by {analysis.supply.how}.")
 
 
 def as_text(answer: Answer, system: System = "si") -> str:
@@ -177,7 +179,7 @@ def as_text(answer: Answer, system: System = "si") -> str:
         title = f"{machine.part.name}: the machine" + (f" ({count} of them)" if count > 1 else "")
         lines += _level(title, At(analysis, number), shown)
     lines += _level("Site", At(analysis), shown)
-    lines += wrapped(_supply_how(analysis))
+    lines += _supply_words(analysis)
     lines += _words("Remarks", analysis.remarks)
     lines += ["", *wrapped(ESTIMATE, "", "")]
     return "\n".join(lines).lstrip("\n") + "\n"

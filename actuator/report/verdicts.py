@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from actuator.analysis import Analysis, Criterion
 from actuator.errors import Refusal
 from actuator.kinds import Kind, fields_of
 from actuator.parts import Require
 from actuator.report.shown import Shown
+from actuator.results import Analysis, Criterion
 
 UPPER = ("stroke_time", "force_time")
 """Requirements that set an upper limit; the others set a lower one."""

@@ -147,7 +147,7 @@ STATIC: tuple[Figure, ...] = (
 )
 
 
-def _rod(name: str, alias: Any, label: str, formula: str, *, inputs: tuple[str, ...], **more: Any) -> Figure:
+def _rod(name: str, alias: Any, label: str, formula: str, *, inputs: tuple[str, ...] = (), **more: Any) -> Figure:
     return Figure(
         level="actuator",
         key=f"rod.{name}",
@@ -174,9 +174,8 @@ ROD: tuple[Figure, ...] = (
         "buckling_safety",
         Number,
         "Buckling safety",
-        "buckling load/largest push,  largest push = max((p_s − p₀)·A₁, static push of the load)",
-        inputs=("bore", "load", *_PRESSURES),
-        uses=("rod.buckling_load",),
+        "buckling load/largest push,  largest push = (p_s − p₀)·A₁",
+        uses=("rod.buckling_load", "static.theoretical_extend"),
         note="Common practice asks for 3.5 to 5.",
     ),
     _rod(
@@ -191,7 +190,8 @@ ROD: tuple[Figure, ...] = (
         Length,
         "Longest stroke",
         "S at which buckling load = wanted safety × largest push, from the same two formulas",
-        inputs=(*_COLUMN, "bore", "load", "require.buckling_safety", *_PRESSURES),
+        inputs=(*_COLUMN, "require.buckling_safety"),
+        uses=("static.theoretical_extend",),
         note="With a wanted safety of 4 where none is asked (common practice, no source).",
     ),
 )
@@ -270,6 +270,15 @@ INDICATOR: tuple[Figure, ...] = (
         "W/m, isothermal admission",
         inputs=(),
         uses=("indicator.work", "indicator.air"),
+    ),
+    _indicator(
+        "unused_share_here",
+        Share,
+        "Unused, this diagram",
+        "1 − W/(m·ψ(p_s, T_s)),  ψ(p, T) = c_p·(T − T₀) − T₀·[c_p·ln(T/T₀) − R·ln(p/p₀)]",
+        inputs=("machine.supply_pressure", "machine.supply_temperature", "site"),
+        uses=("indicator.work", "indicator.air"),
+        note="Share of the exergy of the admitted air that this diagram leaves unused.",
     ),
     _indicator(
         "unused_share",

@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Callable
 from typing import Any
 
-from actuator.analysis import AirCost
 from actuator.errors import Refusal
 from actuator.kinds import (
     CarbonYear,
@@ -20,6 +19,7 @@ from actuator.kinds import (
 )
 from actuator.report.figures.cycle import RATIO, ledger_item, share_of
 from actuator.report.figures.registry import At, Figure, Level, kind
+from actuator.results import Supply
 
 ENERGY_PER_ANR = Kind(dimension="energy_per_volume", unit="J/m**3", suffix="_J_m3")
 """Electricity per volume of air, ANR. [J/m³]"""
@@ -50,7 +50,6 @@ _NOTES: dict[Level, str] = {
 
 def _cost(name: str) -> Callable[[At], float | Refusal]:
     def get(at: At) -> float | Refusal:
-        cost: AirCost | Refusal
         if at.level == "project":
             cost = at.analysis.cost
         else:
@@ -116,11 +115,23 @@ def _demand(name: str, alias: Any, label: str, formula: str, *, note: str = "") 
     )
 
 
-def _supply(name: str, key: str, alias: Any, label: str, formula: str, **more: Any) -> Figure:
+def _of_supply(read: Callable[[Supply], float]) -> Callable[[At], float | Refusal]:
     def get(at: At) -> float | Refusal:
-        found: float = getattr(at.analysis.supply, name)
-        return found
+        supply = at.analysis.supply
+        return supply if isinstance(supply, Refusal) else read(supply)
 
+    return get
+
+
+def _specific_work(supply: Supply) -> float:
+    return supply.specific_work
+
+
+def _specific_energy(supply: Supply) -> float:
+    return supply.specific_energy
+
+
+def _supply(read: Callable[[Supply], float], key: str, alias: Any, label: str, formula: str, **more: Any) -> Figure:
     return Figure(
         level="project",
         key=key,
@@ -129,18 +140,17 @@ def _supply(name: str, key: str, alias: Any, label: str, formula: str, **more: A
         group="Compressed air",
         formula=formula,
         sources=("own", "practice"),
-        get=get,
+        get=_of_supply(read),
         **more,
     )
 
 
-def _upstream(name: str) -> Callable[[At], float | Refusal]:
+def _upstream(read: Callable[[Supply], float]) -> Callable[[At], float | Refusal]:
     def get(at: At) -> float | Refusal:
-        air = at.actuator.air
+        air, rate = at.actuator.air, _of_supply(read)(at)
         if isinstance(air, Refusal):
             return air
-        rate: float = getattr(at.analysis.supply, name)
-        return air.air_drawn * rate
+        return rate if isinstance(rate, Refusal) else air.air_drawn * rate
 
     return get
 
@@ -155,7 +165,7 @@ UPSTREAM: tuple[Figure, ...] = (
         formula="air drawn × electricity per mass of air",
         sources=("own",),
         uses=("cycle.air_drawn", "project.supply.specific_energy"),
-        get=_upstream("specific_energy"),
+        get=_upstream(_specific_energy),
         grouped=True,
     ),
     Figure(
@@ -167,7 +177,7 @@ UPSTREAM: tuple[Figure, ...] = (
         formula="air drawn × work of compression per mass of air",
         sources=("own",),
         uses=("cycle.air_drawn", "project.supply.specific_work"),
-        get=_upstream("specific_work"),
+        get=_upstream(_specific_work),
         grouped=True,
     ),
     *(
@@ -180,10 +190,10 @@ UPSTREAM: tuple[Figure, ...] = (
             formula=f"{label.lower()}/electricity at the meter",
             sources=("own",),
             uses=(used, "cycle.upstream.electricity"),
-            get=share_of(read, _upstream("specific_energy")),
+            get=share_of(read, _upstream(_specific_energy)),
         )
         for name, label, used, read in (
-            ("compression", "Work on the air", "cycle.upstream.compression", _upstream("specific_work")),
+            ("compression", "Work on the air", "cycle.upstream.compression", _upstream(_specific_work)),
             ("port", "Supplied at the port", "cycle.exergy.supplied", ledger_item("supplied")),
             ("load", "Load", "cycle.exergy.load", ledger_item("load")),
         )
@@ -205,17 +215,17 @@ MACHINE: tuple[Figure, ...] = (
 )
 PROJECT: tuple[Figure, ...] = (
     _supply(
-        "specific_work",
+        _specific_work,
         "supply.specific_work",
         SpecificEnergy,
         "Work of compression",
-        "w = z·n/(n−1)·R·T_in·[(p₂/p₁)^((n−1)/(z·n)) − 1], z stages,\n"
-        "divided by their efficiency; later stages start at the intake's temperature plus the approach",
+        "w = Σ over N stages of c_p·T·(r^k − 1)/η_s, or c_p·T·(r^(k/η_p) − 1);  r = (p₂/p₁)^(1/N), "
+        "k = (γ − 1)/γ\nT = intake temperature, after an intercooler no more than the approach above it",
         inputs=_COMPRESSOR,
         note="Per mass of dry air, before drive and motor.",
     ),
     _supply(
-        "specific_energy",
+        _specific_energy,
         "supply.specific_energy",
         SpecificEnergy,
         "Electricity per mass",
@@ -224,7 +234,7 @@ PROJECT: tuple[Figure, ...] = (
         uses=("supply.specific_work",),
     ),
     _supply(
-        "energy_per_anr",
+        lambda supply: supply.energy_per_anr,
         "supply.energy_per_anr",
         ENERGY_PER_ANR,
         "Electricity per m³ ANR",
@@ -232,7 +242,7 @@ PROJECT: tuple[Figure, ...] = (
         uses=("supply.specific_energy",),
     ),
     _supply(
-        "price_per_anr",
+        lambda supply: supply.price_per_anr,
         "money.per_anr_m3",
         PriceAir,
         "Price of 1 m³ ANR",

@@ -7,9 +7,9 @@ from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Any, Literal
 
-from actuator.analysis import ActuatorResult, Analysis, MachineResult
 from actuator.errors import Refusal
 from actuator.kinds import Kind, kind_of
+from actuator.results import ActuatorResult, Analysis, MachineResult
 from actuator.sources import SOURCES, Source
 from actuator.stroke.result import StrokeResult
 
