@@ -9,17 +9,8 @@ from dataclasses import dataclass
 from actuator.air.gas import GAMMA, GRAVITY
 from actuator.errors import Refusal
 from actuator.parts import Actuator, Machine, Site
-from actuator.sources import OWN, PRACTICE, Source
+from actuator.sources import ISO_4414, OSHA_1910, OWN, PCC_2, PRACTICE, Source
 from actuator.stroke.result import HalfStroke, StrokeResult
-
-ISO_4414 = Source(
-    key="iso4414",
-    title="ISO 4414, Pneumatic fluid power: general rules and safety requirements",
-    edition="2010",
-    how="excerpt",
-)
-PCC_2 = Source(key="pcc2", title="ASME PCC-2, stored energy of a pneumatic test")
-OSHA_BLOW_OFF = Source(key="osha1910.242", title="29 CFR 1910.242(b), United States", how="seen")
 
 STICK_SLIP_SPEED = 0.05
 """Mean speed below which stick-slip is likely: common practice, no source. [m/s]"""
@@ -32,8 +23,7 @@ _SIGNAL_LOST = {
     "5/2 spring": "the spring moves the valve to rest, taken here as retracting, and the piston goes back "
     "with full force from wherever it is",
     "5/2 detent": "the valve stays where it is and the piston completes its stroke with full force",
-    "5/3 closed": "the ports close and the piston stops on trapped air: it gives under load, and creeps as "
-    "seals leak",
+    "5/3 closed": "the ports close and the piston stops on trapped air: it gives under load, and creeps as seals leak",
     "5/3 exhausted": "both chambers vent and the piston is free: whatever pushes it moves it",
     "5/3 pressurised": "both chambers are pressurised and the piston is driven out by the pressure on the "
     "area of its rod",
@@ -72,9 +62,7 @@ def _weight(actuator: Actuator) -> Iterator[Caution]:
     if pull == 0.0:
         return
     way = "retracts" if pull > 0.0 else "extends"
-    held = actuator.friction.breakaway + load.guide_friction * load.mass * GRAVITY * math.cos(
-        load.inclination
-    )
+    held = actuator.friction.breakaway + load.guide_friction * load.mass * GRAVITY * math.cos(load.inclination)
     friction = (
         "The friction given would hold it, but friction is no lock: wear, oil and vibration lower it."
         if abs(pull) <= held
@@ -119,9 +107,7 @@ def _first_stroke(actuator: Actuator, stroke: StrokeResult | Refusal) -> Iterato
     )
 
 
-def _impact(
-    actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal
-) -> Iterator[Caution]:
+def _impact(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal) -> Iterator[Caution]:
     """Pinch points and the energy at the ends."""
     force = (machine.supply_pressure - site.ambient_pressure) * actuator.area_cap
     yield _caution(
@@ -206,7 +192,7 @@ def _noise_and_blow_off(machine: Machine, site: Site) -> Iterator[Caution]:
             "This supply is above 30 psi (2.07 bar) gauge. As one example of a local rule, the United States "
             "allow cleaning with compressed air only below that pressure, with chip guarding and personal "
             "protection. Never point it at people.",
-            OSHA_BLOW_OFF,
+            OSHA_1910,
         )
 
 
@@ -232,9 +218,7 @@ def _motion(stroke: StrokeResult | Refusal) -> Iterator[Caution]:
             )
 
 
-def cautions(
-    actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal
-) -> tuple[Caution, ...]:
+def cautions(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal) -> tuple[Caution, ...]:
     """Cautions that go with one actuator's results.
 
     Parameters

@@ -6,17 +6,13 @@ Nothing but the standard library is imported until a command needs it, so that `
 from __future__ import annotations
 
 import argparse
-import signal
 import sys
-import threading
-from collections.abc import Iterator, Sequence
-from contextlib import contextmanager
+from collections.abc import Sequence
 from pathlib import Path
-from types import FrameType
-from typing import TYPE_CHECKING, NoReturn
+from typing import TYPE_CHECKING
 
 from actuator.errors import InputError, Problem
-from actuator.report.streams import emit, is_unicode, silence
+from actuator.report.streams import emit, ending_cleanly, is_unicode, silence
 
 if TYPE_CHECKING:
     from actuator.answer import Answer
@@ -294,28 +290,6 @@ def _parser() -> argparse.ArgumentParser:
     return top
 
 
-def _ended(number: int, _: FrameType | None) -> NoReturn:
-    raise SystemExit(128 + number)
-
-
-@contextmanager
-def _ending_cleanly() -> Iterator[None]:
-    """Let a termination signal unwind, so that no temporary file stays behind."""
-    if threading.current_thread() is not threading.main_thread():
-        yield
-        return
-    numbers = (signal.SIGTERM, signal.SIGHUP)
-    former = {number: signal.getsignal(number) for number in numbers}
-    for number in numbers:
-        if former[number] is signal.SIG_DFL:
-            signal.signal(number, _ended)
-    try:
-        yield
-    finally:
-        for number in numbers:
-            signal.signal(number, former[number])
-
-
 def main(argv: Sequence[str] | None = None) -> int:
     """Run one command.
 
@@ -339,7 +313,7 @@ def main(argv: Sequence[str] | None = None) -> int:
     if getattr(arguments, "histories", False) and not arguments.json:
         parser.error("--histories needs --json")
     try:
-        with _ending_cleanly():
+        with ending_cleanly():
             status: int = arguments.run(arguments)
     except KeyboardInterrupt:
         return INTERRUPTED

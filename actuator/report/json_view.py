@@ -170,14 +170,16 @@ def as_data(answer: Answer, *, histories: bool = False) -> Tree:
     analysis = answer.analysis
     if analysis is None:
         return problems_as_data(answer.problems)
-    return {
+    data: Tree = {
         "problems": [],
         "machines": [_machine(analysis, number, histories) for number in range(len(analysis.machines))],
         **_figures(At(analysis), money=False),
-        "how": analysis.supply.how,
         "money": _money(analysis),
         "remarks": list(analysis.remarks),
     }
+    if not isinstance(analysis.supply, Refusal):
+        data["supply"]["how"] = analysis.supply.how
+    return data
 
 
 def as_json(data: Tree, *, ascii_only: bool = False) -> str:

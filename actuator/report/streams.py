@@ -1,10 +1,14 @@
-"""Writing to a stream that may be closed, or that cannot show every character."""
+"""The process around a view: streams that may be closed or narrow, signals that end it."""
 
 from __future__ import annotations
 
 import os
-from contextlib import suppress
-from typing import TextIO
+import signal
+import threading
+from collections.abc import Iterator
+from contextlib import contextmanager, suppress
+from types import FrameType
+from typing import NoReturn, TextIO
 
 _SPELLED = str.maketrans(
     {
@@ -104,3 +108,25 @@ def silence(stream: TextIO) -> None:
         sink = os.open(os.devnull, os.O_WRONLY)
         os.dup2(sink, stream.fileno())
         os.close(sink)
+
+
+def _ended(number: int, _: FrameType | None) -> NoReturn:
+    raise SystemExit(128 + number)
+
+
+@contextmanager
+def ending_cleanly() -> Iterator[None]:
+    """Let a termination signal unwind, so that no temporary file stays behind."""
+    if threading.current_thread() is not threading.main_thread():
+        yield
+        return
+    numbers = (signal.SIGTERM, signal.SIGHUP)
+    former = {number: signal.getsignal(number) for number in numbers}
+    for number in numbers:
+        if former[number] is signal.SIG_DFL:
+            signal.signal(number, _ended)
+    try:
+        yield
+    finally:
+        for number in numbers:
+            signal.signal(number, former[number])

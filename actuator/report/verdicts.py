@@ -28,8 +28,12 @@ def label_of_requirement(name: str) -> str:
     return found.label
 
 
-def _percent(share: float) -> str:
-    return f"{abs(share) * 100.0:.3g} %"
+def _distance(margin: float, upper: bool) -> str:
+    """How far a value lies from its limit, in words; ``margin`` is positive on the good side."""
+    side = "below" if (margin > 0.0) == upper else "above"
+    if side == "above" and abs(margin) >= 9.0:
+        return f"{1.0 + abs(margin):,.0f} times".replace(",", " ")
+    return f"{abs(margin) * 100.0:.3g} % {side}"
 
 
 def verdict_line(criterion: Criterion, shown: Shown) -> str:
@@ -58,8 +62,8 @@ def verdict_line(criterion: Criterion, shown: Shown) -> str:
         return f"{sign}: {label}: {got}; {limit}"
     if criterion.margin == 0.0:
         return f"{sign}: {label}: {got}, exactly the {limit}"
-    below = (criterion.margin > 0.0) == (criterion.name in UPPER)
-    return f"{sign}: {label}: {got}, {_percent(criterion.margin)} {'below' if below else 'above'} the {limit}"
+    distance = _distance(criterion.margin, criterion.name in UPPER)
+    return f"{sign}: {label}: {got}, {distance} the {limit}"
 
 
 def all_met(analysis: Analysis) -> bool:

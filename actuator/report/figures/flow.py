@@ -72,7 +72,7 @@ def _figure(path: str, name: str, alias: Any, label: str, formula: str) -> Figur
         label=f"{path[0].upper()}{path[1:]}: {label}",
         group="Flow paths",
         formula=formula,
-        sources=("iso6358", "own"),
+        sources=("iso6358", "iso6358-3", "own"),
         inputs=("valve", "throttle"),
         get=_read(path, name),
         note="Valve and throttle in series; their order matters, so each direction has its own figure.",

@@ -139,7 +139,7 @@ def _supply(read: Callable[[Supply], float], key: str, alias: Any, label: str, f
         label=label,
         group="Compressed air",
         formula=formula,
-        sources=("own", "practice"),
+        sources=("own", "cengel", "iso1217", "practice"),
         get=_of_supply(read),
         **more,
     )

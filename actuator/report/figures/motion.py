@@ -122,7 +122,7 @@ def _figure(direction: Direction, row: tuple[str, Any, str, str, str]) -> Figure
         label=label,
         group="Motion",
         formula=formula,
-        sources=("own", "iso6358"),
+        sources=("own", "iso6358", "armstrong"),
         inputs=_EXTRA_INPUTS.get(name, ()) + SIMULATION,
         uses=tuple(f"{direction}.{used}" for used in _EXTRA_USES.get(name, ())),
         get=_half(direction, name),
