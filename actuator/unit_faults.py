@@ -7,10 +7,18 @@ import re
 from collections.abc import Callable
 
 from actuator.air.states import STATES
+from actuator.errors import ActuatorError
 from actuator.kinds import Kind
 from actuator.unit_table import ABSOLUTE, DIMENSIONS, GAUGE, INTAKE, Dimension
 
+LONGEST = 100
+"""Characters of a quantity; longer text is refused before any arithmetic."""
+
 _NO_NUMBER = re.compile(r"\s*[+-]?(nan|inf|infinity)\b", re.IGNORECASE)
+
+
+class UnitFault(ActuatorError, ValueError):
+    """A quantity that cannot be read; the text says what to write instead."""
 
 
 def explain_unit(text: str, end: int, kind: Kind, currency: str) -> str:
@@ -20,7 +28,7 @@ def explain_unit(text: str, end: int, kind: Kind, currency: str) -> str:
     number, unit = text[:end].strip(), " ".join(text[end:].split())
     if not text.strip():
         return f"is empty; write {dimension.name}, {example}"
-    if len(text) > 100:
+    if len(text) > LONGEST:
         return f"is too long; write {dimension.name}, {example}"
     if _NO_NUMBER.match(text):
         return f"must be a finite number, {example}"
@@ -126,3 +134,8 @@ def explain_range(kind: Kind, value: float, limit_text: Callable[[float], str]) 
         return f"must be below {limit_text(kind.below)}"
     assert kind.at_most is not None
     return f"must be at most {limit_text(kind.at_most)}"
+
+
+def explain_share(text: str, value: float) -> str:
+    """Say how to write a bare number above 1 where a share is expected."""
+    return f'is a share above 1: write "{text} %" or "{value * 100.0:g} %"'

@@ -139,12 +139,8 @@ DIMENSIONS: dict[str, Dimension] = {
         example="10 K",
     ),
     "length": Dimension(name="a length", forms=LENGTH, si=("mm", "m"), us=("in", "ft"), example="50 mm"),
-    "area": Dimension(
-        name="an area", forms=AREA, si=("mm2", "cm2", "m2"), us=("in2", "ft2"), example="10 mm2"
-    ),
-    "volume": Dimension(
-        name="a volume", forms=VOLUME, si=("cm3", "L", "m3"), us=("in3", "ft3"), example="20 cm3"
-    ),
+    "area": Dimension(name="an area", forms=AREA, si=("mm2", "cm2", "m2"), us=("in2", "ft2"), example="10 mm2"),
+    "volume": Dimension(name="a volume", forms=VOLUME, si=("cm3", "L", "m3"), us=("in3", "ft3"), example="20 cm3"),
     "mass": Dimension(name="a mass", forms=MASS, si=("kg", "g", "t"), us=("lb", "oz"), example="20 kg"),
     "force": Dimension(name="a force", forms=FORCE, si=("N", "kN"), us=("lbf",), example="100 N"),
     "viscous": Dimension(

@@ -5,16 +5,18 @@ from __future__ import annotations
 from collections.abc import Callable
 from typing import Any
 
-from actuator.errors import InputError, Problem
+from actuator.errors import Problem
 from actuator.parts import Compressor, Money, Plant, Project, Site
-from actuator.project import paths
 from actuator.project.document import Document
 from actuator.project.fields import FORMAT, fields
 from actuator.project.machines import machines
 from actuator.project.paths import Steps
 from actuator.project.schema import sheet
-from actuator.project.walk import Values, Walk
+from actuator.project.walk import Walk
 from actuator.units import Reading
+
+_RATED_GAUGE = 7.5e5
+"""Default rated pressure above ambient, 7.5 bar gauge; common practice, no source. [Pa]"""
 
 
 def validate(document: Document) -> Project | tuple[Problem, ...]:
@@ -79,8 +81,6 @@ def _part(
     values = walk.table(part, steps, here)
     if values is None:
         return None
-    if part is Compressor:
-        _efficiencies(values)
     walk.needed(part, steps, values)
     return walk.built(part, steps, values) if len(walk.problems) == before else None
 
@@ -106,40 +106,49 @@ def _ambient(walk: Walk, steps: Steps, here: dict[str, Any]) -> None:
         )
 
 
-def _efficiencies(values: Values) -> None:
-    """A polytropic efficiency takes the place of the isentropic default."""
-    if "polytropic_efficiency" in values and "isentropic_efficiency" not in values:
+def _compressor(walk: Walk, steps: Steps, here: Any) -> Compressor | None:
+    """Measured package, or stages and efficiencies."""
+    before = len(walk.problems)
+    values = walk.table(Compressor, steps, here)
+    if values is None:
+        return None
+    ambient = walk.reading.ambient_pressure
+    if values.setdefault("rated_pressure", ambient + _RATED_GAUGE) <= ambient:
+        at = (*steps, "rated_pressure")
+        walk.problem(at, walk.at(at), 'must be above the ambient pressure, e.g. "7.5 bar gauge"')
+    for key, other in (("free_air", "package_power"), ("package_power", "free_air")):
+        if key in here and other not in here:
+            entry = fields(Compressor)[other].entry
+            assert entry is not None
+            walk.problem((*steps, other), None, f'is needed with {key}: {other} = "{entry.example}", or leave both out')
+    if "polytropic_efficiency" in here:
+        if "isentropic_efficiency" in here:
+            at = (*steps, "polytropic_efficiency")
+            walk.problem(at, walk.at(at), "leave out either this or isentropic_efficiency: one replaces the other")
         values["isentropic_efficiency"] = None
+    if len(walk.problems) > before:
+        return None
+    made: Compressor | None = walk.built(Compressor, steps, values)
+    return made
 
 
 def _plant(walk: Walk, here: Any) -> Plant | None:
+    """The one compressor, typed or by default."""
     values = walk.table(Plant, ("plant",), here)
     if values is None:
         return None
-    listed = values.get("compressors")
+    listed = values.get("compressors", [{}])
     steps: Steps = ("plant", "compressor")
-    if listed is None:
-        return Plant()
-    if not isinstance(listed, list):
+    if not isinstance(listed, list) or not listed:
         walk.problem(steps, listed, "must be a list of tables: write [[plant.compressor]], with two brackets")
         return None
-    if len(listed) != 1:
+    if len(listed) > 1:
         walk.problem(
-            (*steps, 2) if listed else steps,
-            None,
-            "this version reckons with exactly one compressor: leave one [[plant.compressor]], or none",
+            (*steps, 2), None, "one compressor is reckoned with in this version: leave one [[plant.compressor]]"
         )
         return None
-    compressor = _part(walk, Compressor, (*steps, 1), listed[0])
-    if compressor is None:
-        return None
-    if compressor.rated_pressure <= walk.reading.ambient_pressure:
-        walk.problem(
-            (*steps, 1, "rated_pressure"),
-            listed[0].get("rated_pressure"),
-            "must be above the ambient pressure",
-        )
-    return Plant(compressors=(compressor,))
+    compressor = _compressor(walk, (*steps, 1), listed[0])
+    return Plant(compressors=(compressor,)) if compressor is not None else None
 
 
 def provenance(document: Document) -> dict[str, str]:
@@ -165,6 +174,3 @@ def provenance(document: Document) -> dict[str, str]:
                     if row.default and not document.text(row.path):
                         found[row.path] = row.default
     return found
-
-
-__all__ = ["InputError", "paths", "provenance", "validate"]

@@ -13,6 +13,7 @@ from actuator.project.document import Document, told
 from actuator.project.fields import fields
 from actuator.project.locate import line_of
 from actuator.project.paths import Steps
+from actuator.unit_table import DIMENSIONS
 from actuator.units import Reading, UnitFault, read, show
 
 Values = dict[str, Any]
@@ -34,7 +35,7 @@ class Walk:
         self.problems.append(
             Problem(
                 path=paths.join(steps),
-                given=told(given) if given is not None else "",
+                given=_given(given),
                 allowed=allowed,
                 line=line_of(self.document.source, steps),
             )
@@ -64,7 +65,7 @@ class Walk:
         Nested tables and lists are left as they stand; absent keys are absent.
         """
         if not isinstance(here, Mapping):
-            self.problem(steps, here, f"must be a table: write [{_header(steps)}] on a line of its own")
+            self.problem(steps, here, f"must be a table: write {_header(steps)} on a line of its own")
             return None
         known = fields(part)
         values: Values = {}
@@ -89,9 +90,7 @@ class Walk:
                 and (*steps, key) not in self.bad
             ):
                 assert spec.entry is not None
-                example = spec.entry.example
-                example = example if not example or example[0] == '"' or _is_bare(spec) else f'"{example}"'
-                self.problem((*steps, key), None, f"is needed: {spec.entry.help} Write {key} = {example}")
+                self.problem((*steps, key), None, f"is needed: {spec.entry.help} Write {_form(spec)}")
 
     def leaf(self, steps: Steps, spec: FieldSpec, value: Any, values: Values) -> None:
         """Read one value."""
@@ -140,8 +139,18 @@ class Walk:
         return None
 
 
+def _given(value: Any) -> str:
+    """What stands there, verbatim; long lists and tables are cut."""
+    if value is None:
+        return ""
+    text = told(value)
+    return text if not isinstance(value, (list, dict)) or len(text) <= 60 else text[:57] + "..."
+
+
 def _header(steps: Steps) -> str:
-    return ".".join(step for step in steps if isinstance(step, str))
+    """Header line of a table, or of an item in a list of tables."""
+    name = ".".join(step for step in steps if isinstance(step, str))
+    return f"[[{name}]]" if isinstance(steps[-1], int) else f"[{name}]"
 
 
 def _is_bare(spec: FieldSpec) -> bool:
@@ -153,6 +162,8 @@ def _form(spec: FieldSpec) -> str:
     if spec.choices:
         return _choice("", spec.choices)
     example = (spec.entry.example if spec.entry else "").strip('"')
+    if spec.kind is not None and not example:
+        example = DIMENSIONS[spec.kind.dimension].example
     return f"{spec.key} = {example}" if _is_bare(spec) else f'{spec.key} = "{example}"'
 
 
