@@ -115,6 +115,13 @@ ISO_4414 = Source(
     edition="2010",
     how="excerpt",
 )
+PCC_2 = Source(key="pcc2", title="ASME PCC-2, Repair of pressure equipment and piping", place="stored energy")
+OSHA_1910 = Source(
+    key="osha1910.242",
+    title="29 CFR 1910.242(b), United States: compressed air used for cleaning",
+    place="below 30 psi",
+    how="seen",
+)
 
 # Books; page numbers are those that the open companion notebooks give, whose editions are not always named
 MORAN = Source(
@@ -148,7 +155,7 @@ JOEL = Source(
 NAG = Source(
     key="nag",
     title="Nag, Engineering Thermodynamics",
-    place="examples 3.10, 3.11 and 18.2 to 18.6, p. 724 to 728",
+    place="examples 3.10, 3.11 and 18.2 to 18.6, p. 63 and 724 to 728",
     how="excerpt",
 )
 SINGH = Source(
@@ -253,6 +260,8 @@ _ALL = (
     IAPWS_IF97,
     IAPWS_ICE,
     ISO_4414,
+    PCC_2,
+    OSHA_1910,
     MORAN,
     BORGNAKKE,
     CENGEL_BOLES,

@@ -31,7 +31,7 @@ def flow_exergy(p: ArrayLike, temp: ArrayLike, p_ambient: ArrayLike, temp_ambien
 
     References
     ----------
-    .. [1] Cengel, Boles, Thermodynamics: An Engineering Approach, 4th ed. (2002), chapter 7 (excerpt).
+    .. [1] Cengel, Boles, Thermodynamics: An Engineering Approach, chapter on exergy (excerpt).
     """
     p, temp = np.asarray(p, dtype=np.float64), np.asarray(temp, dtype=np.float64)
     p0, t0 = np.asarray(p_ambient, dtype=np.float64), np.asarray(temp_ambient, dtype=np.float64)
@@ -65,8 +65,7 @@ def stored_exergy(
 
     References
     ----------
-    .. [1] Cengel, Boles, Thermodynamics: An Engineering Approach, 4th ed. (2002), example 7-7 in chapter 7
-       (excerpt).
+    .. [1] Cengel, Boles, Thermodynamics: An Engineering Approach, example 8-7, p. 438 (excerpt).
     """
     p, temp = np.asarray(p, dtype=np.float64), np.asarray(temp, dtype=np.float64)
     p0, t0 = np.asarray(p_ambient, dtype=np.float64), np.asarray(temp_ambient, dtype=np.float64)

@@ -36,8 +36,8 @@ def polytropic_work(p1: ArrayLike, v1: ArrayLike, v2: ArrayLike, index: ArrayLik
 
     References
     ----------
-    .. [1] Moran, Shapiro, Fundamentals of Engineering Thermodynamics, 5th ed. (2006), example 2.1, p. 39,
-       rewritten so that n = 1 is no special case.
+    .. [1] Moran, Shapiro, Fundamentals of Engineering Thermodynamics, example 2.1, p. 39 (excerpt), rewritten
+       so that n = 1 is no special case.
     """
     p1, v1, v2, index = (np.asarray(item, dtype=np.float64) for item in (p1, v1, v2, index))
     L = np.log1p((v2 - v1) / v1)
@@ -112,8 +112,8 @@ def polytropic_heat(p1: ArrayLike, v1: ArrayLike, v2: ArrayLike, index: ArrayLik
 
     References
     ----------
-    .. [1] Eastop, McConkey, Applied Thermodynamics for Engineering Technologists, 5th ed. (1993), section 3.3
-       (from memory).
+    .. [1] Eastop, McConkey, Applied Thermodynamics for Engineering Technologists, 5th ed., polytropic
+       processes (from memory).
     """
     share = (GAMMA - np.asarray(index, dtype=np.float64)) / (GAMMA - 1.0)
     result: Array = share * polytropic_work(p1, v1, v2, index)

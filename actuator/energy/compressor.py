@@ -36,9 +36,7 @@ class SupplyWork:
     """What the figures rest on, in words."""
 
 
-def steady_flow_work(
-    temp_in: ArrayLike, ratio: ArrayLike, index: ArrayLike, *, gas_constant: float = R_AIR
-) -> Array:
+def steady_flow_work(temp_in: ArrayLike, ratio: ArrayLike, index: ArrayLike, *, gas_constant: float = R_AIR) -> Array:
     r"""Work of compressing a steady flow, without friction.
 
     Parameters
@@ -65,8 +63,7 @@ def steady_flow_work(
 
     References
     ----------
-    .. [1] Cengel, Boles, Thermodynamics: An Engineering Approach, 4th ed. (2002), example 6-13 in the
-       chapter on entropy (excerpt).
+    .. [1] Cengel, Boles, Thermodynamics: An Engineering Approach, example 7-13, p. 368 (excerpt).
     """
     index = np.asarray(index, dtype=np.float64)
     log_ratio = np.log(np.asarray(ratio, dtype=np.float64))
@@ -176,7 +173,7 @@ def volumetric_efficiency(clearance: float, ratio: float, index: float) -> float
 
     References
     ----------
-    .. [1] Joel, Basic Engineering Thermodynamics, 5th ed. (1996), example 14.1, p. 400 (excerpt).
+    .. [1] Joel, Basic Engineering Thermodynamics, 5th ed., example 14.1, p. 400 (excerpt).
     """
     return max(1.0 + clearance - clearance * math.exp(math.log(ratio) / index), 0.0)
 
@@ -240,8 +237,7 @@ def supply_work(compressor: Compressor, site: Site) -> SupplyWork | Refusal:
     References
     ----------
     .. [1] ISO 1217:2009, Displacement compressors, acceptance tests (free air delivered, from memory).
-    .. [2] Cengel, Boles, Thermodynamics: An Engineering Approach, 4th ed. (2002), isentropic efficiency of a
-       compressor (excerpt).
+    .. [2] Cengel, Boles, Thermodynamics: An Engineering Approach, example 7-15, p. 374 (excerpt).
     """
     ratio = compressor.rated_pressure / site.ambient_pressure
     if ratio <= 1.0:

@@ -42,9 +42,7 @@ class AirDifference:
     """The same in words with numbers, litres ANR."""
 
 
-def textbook_air(
-    *, p_extend: float, p_retract: float, temp_supply: float, swept_cap: float, swept_rod: float
-) -> float:
+def textbook_air(*, p_extend: float, p_retract: float, temp_supply: float, swept_cap: float, swept_rod: float) -> float:
     """Air of a cycle by the textbook: swept volumes at supply pressure and temperature.
 
     Parameters
@@ -63,8 +61,8 @@ def textbook_air(
 
     References
     ----------
-    .. [1] Esposito, Fluid Power with Applications, 7th ed. (2009), example 13-12, p. 511 (excerpt), which
-       counts one chamber only.
+    .. [1] Esposito, Fluid Power with Applications, example 13-12, p. 511 (excerpt), which counts one chamber
+       only.
     """
     return (p_extend * swept_cap + p_retract * swept_rod) / (R_AIR * temp_supply)
 

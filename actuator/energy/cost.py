@@ -46,6 +46,4 @@ def yearly_cost(
         At the mean price; leaks, dryer and idling are not in it.
     """
     energy = air_per_cycle * cycles_per_year * specific_energy
-    return YearlyCost(
-        energy_year=energy, cost_year=energy * energy_price, carbon_year=energy * carbon_intensity
-    )
+    return YearlyCost(energy_year=energy, cost_year=energy * energy_price, carbon_year=energy * carbon_intensity)

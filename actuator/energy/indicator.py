@@ -132,14 +132,13 @@ def diagram(
 
     References
     ----------
-    .. [1] Eastop, McConkey, Applied Thermodynamics for Engineering Technologists, 5th ed. (1993), air motors
-       (from memory).
+    .. [1] Eastop, McConkey, Applied Thermodynamics for Engineering Technologists, 5th ed., air motors (from
+       memory).
+    .. [2] Nag, Engineering Thermodynamics, example 18.5, p. 727 (excerpt), without clearance.
     """
     if closure > 0.0 and clearance <= 0.0:
         raise InputError(
-            Problem(
-                path="closure", given=f"{closure:g}", allowed="0 without clearance: there is no end to it"
-            )
+            Problem(path="closure", given=f"{closure:g}", allowed="0 without clearance: there is no end to it")
         )
     least, v1, v2 = clearance * swept, (clearance + cut_off) * swept, (clearance + 1.0) * swept
     v3 = (clearance + closure) * swept
@@ -155,8 +154,7 @@ def diagram(
     remarks = []
     if p_compressed > p_supply:
         remarks.append(
-            f"Recompression ends at {p_compressed / 1e5:.3g} bar absolute, above the supply: "
-            "shut the exhaust later."
+            f"Recompression ends at {p_compressed / 1e5:.3g} bar absolute, above the supply: shut the exhaust later."
         )
     if p_release < p_back:
         remarks.append(

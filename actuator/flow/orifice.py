@@ -37,7 +37,7 @@ def choked_constant(*, gamma: float = GAMMA, gas_constant: float = R_AIR) -> flo
 
     References
     ----------
-    .. [1] Murugaperumal, Gas Dynamics and Jet Propulsion (2005), example 1.39, p. 68 (excerpt).
+    .. [1] Murugaperumal, Gas Dynamics and Jet Propulsion, 1st ed. (2005), example 1.39, p. 68 (excerpt).
     """
     exponent = (gamma + 1.0) / (2.0 * (gamma - 1.0))
     return math.sqrt(gamma / gas_constant) * math.pow(2.0 / (gamma + 1.0), exponent)
@@ -125,8 +125,8 @@ def ideal_nozzle_flow(
 
     References
     ----------
-    .. [1] Fox, McDonald, Introduction to Fluid Mechanics, 6th ed. (2004), chapter 12 (excerpt).
-    .. [2] Isermann, Combustion Engine Diagnosis (2017), p. 252, for its highest value 0.484 (excerpt).
+    .. [1] Fox, McDonald, Introduction to Fluid Mechanics, example 12.2, p. 634 (excerpt).
+    .. [2] Isermann, Combustion Engine Diagnosis (2017), p. 252, for its highest value 0.484 (seen).
     """
     p_up, p_down = np.asarray(p_up, dtype=np.float64), np.asarray(p_down, dtype=np.float64)
     critical = (2.0 / (gamma + 1.0)) ** (gamma / (gamma - 1.0))

@@ -101,9 +101,7 @@ def _choked_behind(before: Sequence[Element], limit: float, c: float) -> float:
     """Largest flow of a chain that passes ``limit`` at most, with an element of conductance ``c`` behind."""
 
     def spare(angle: float) -> float:
-        flow = limit * math.sin(
-            angle
-        )  # the pressure falls like a root near the limit; in the angle it is smooth
+        flow = limit * math.sin(angle)  # the pressure falls like a root near the limit; in the angle it is smooth
         return max(chain_end(before, flow), 0.0) * c / limit - math.sin(angle)
 
     low, high = 0.0, 0.5 * math.pi

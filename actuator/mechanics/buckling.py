@@ -64,9 +64,7 @@ class Column:
 
 def _known(mounting: str) -> None:
     if mounting not in SHARE_OF_STROKE:
-        raise InputError(
-            Problem(path="mounting", given=mounting, allowed="one of " + ", ".join(SHARE_OF_STROKE))
-        )
+        raise InputError(Problem(path="mounting", given=mounting, allowed="one of " + ", ".join(SHARE_OF_STROKE)))
 
 
 def default_closed_length(mounting: str, bore: float, stroke: float) -> float:
@@ -124,9 +122,7 @@ def end_factor(mounting: str, rod_end: str) -> float | Refusal:
         return END_FACTORS[rear, rod_end]
     if rod_end == "free":
         return Refusal("a free rod end on a hinged mounting is a mechanism: guide the rod end", "rod_end")
-    raise InputError(
-        Problem(path="rod_end", given=rod_end, allowed="one of fixed-guided, hinged-guided, free")
-    )
+    raise InputError(Problem(path="rod_end", given=rod_end, allowed="one of fixed-guided, hinged-guided, free"))
 
 
 def euler_load(modulus: float, inertia: float, effective_length: float) -> float:
@@ -148,7 +144,7 @@ def euler_load(modulus: float, inertia: float, effective_length: float) -> float
 
     References
     ----------
-    .. [1] Gere, Mechanics of Materials, 6th ed. (2004), chapter 11 (excerpt).
+    .. [1] Gere, Mechanics of Materials, example 11.1, p. 763 (excerpt).
     """
     return math.pi**2 * modulus * inertia / effective_length**2
 
@@ -169,9 +165,7 @@ def transition_slenderness(modulus: float = E_STEEL, yield_stress: float = YIELD
     return math.pi * math.sqrt(2.0 * modulus / yield_stress)
 
 
-def column(
-    rod: float, effective_length: float, *, modulus: float = E_STEEL, yield_stress: float = YIELD_ROD
-) -> Column:
+def column(rod: float, effective_length: float, *, modulus: float = E_STEEL, yield_stress: float = YIELD_ROD) -> Column:
     r"""Buckling load of a round rod.
 
     Parameters
@@ -212,9 +206,7 @@ def column(
     return Column(load=load, slenderness=slenderness, transition=transition, rule="Johnson")
 
 
-def longest_column(
-    rod: float, load: float, *, modulus: float = E_STEEL, yield_stress: float = YIELD_ROD
-) -> float:
+def longest_column(rod: float, load: float, *, modulus: float = E_STEEL, yield_stress: float = YIELD_ROD) -> float:
     """Longest effective length at which a rod's buckling load is still ``load``; inverse of :func:`column`.
 
     Parameters

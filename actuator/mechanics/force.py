@@ -58,8 +58,7 @@ def theoretical_extend(p_supply: float, p_ambient: float, bore: float) -> float:
 
     References
     ----------
-    .. [1] Esposito, Fluid Power with Applications, 7th ed. (2009), chapter 6, force of a cylinder (from
-       memory).
+    .. [1] Pressure times area; atmosphere acts on both ends of rod and piston.
     """
     return (p_supply - p_ambient) * area_cap(bore)
 
