@@ -170,7 +170,7 @@ class Valve:
         Entry(
             "Exhaust b",
             "Critical back-pressure ratio of the exhaust path.",
-            default="0.3, common practice, no source",
+            default="the supply path's, common practice, no source",
             example="0.30",
         ),
     ] = 0.3
