@@ -87,6 +87,8 @@ def _origin(answer: Answer, spec: FieldSpec, path: str) -> str:
 
 
 def _value(value: Any, spec: FieldSpec, shown: Shown) -> str:
+    if spec.name == "ambient_pressure" and spec.kind is not None:
+        return shown.absolute(float(value), spec.kind)
     if spec.kind is not None:
         return shown.text(float(value), spec.kind)
     return str(value)

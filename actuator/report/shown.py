@@ -42,6 +42,11 @@ class Shown:
             return f"refused: {value.reason}"
         return " ".join(self.number(value, kind)).rstrip()
 
+    def absolute(self, value: float, kind: Kind) -> str:
+        """A pressure in absolute terms, for the atmosphere that gauge pressures count from."""
+        number, unit = show(value, kind, Reading(0.0, self.reading.currency), self.system, DIGITS)
+        return f"{number} {unit.replace('gauge', 'absolute')}"
+
     def figure(self, figure: Figure, at: At) -> str:
         """Value of a figure with its unit, or why there is none."""
         return self.text(figure.value(at), figure.kind)

@@ -120,13 +120,11 @@ def ending_cleanly() -> Iterator[None]:
     if threading.current_thread() is not threading.main_thread():
         yield
         return
-    numbers = (signal.SIGTERM, signal.SIGHUP)
-    former = {number: signal.getsignal(number) for number in numbers}
+    numbers = [number for number in (signal.SIGTERM, signal.SIGHUP) if signal.getsignal(number) is signal.SIG_DFL]
     for number in numbers:
-        if former[number] is signal.SIG_DFL:
-            signal.signal(number, _ended)
+        signal.signal(number, _ended)
     try:
         yield
     finally:
         for number in numbers:
-            signal.signal(number, former[number])
+            signal.signal(number, signal.SIG_DFL)

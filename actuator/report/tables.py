@@ -76,7 +76,7 @@ def table(title: str, figures: Sequence[Figure], at: At, shown: Shown) -> list[s
     title : str
         Heading.
     figures : sequence of Figure
-        Of the place's level, all with a direction or none.
+        Of the place's level; those without a direction stand below those with one.
     at : At
     shown : Shown
 
@@ -85,13 +85,16 @@ def table(title: str, figures: Sequence[Figure], at: At, shown: Shown) -> list[s
     list of str
         Lines, heading first; reasons of what is refused last.
     """
-    rows: dict[str, list[Figure]] = {}
-    for figure in figures:
-        rows.setdefault(figure.row, []).append(figure)
-    directed = any(figure.direction for figure in figures)
+    directed = [figure for figure in figures if figure.direction]
+    single = [figure for figure in figures if not figure.direction]
     lines = head(title, ("extend", "retract") if directed else ("value",))
+    rows: dict[str, list[Figure]] = {}
+    for figure in directed + single:
+        rows.setdefault(figure.row, []).append(figure)
     seen: list[tuple[str, Cell]] = []
     for row in rows.values():
+        if directed and row[0] in single[:1]:
+            lines.append(line("", ("value",)))
         cells = [cell(figure, at, shown) for figure in row]
         seen += [(f"{figure.label} {figure.direction}".rstrip(), item) for figure, item in zip(row, cells, strict=True)]
         lines.append(line(row[0].label, [item.number for item in cells], cells[0].unit))

@@ -85,12 +85,12 @@ def _paths(at: At, shown: Shown) -> list[str]:
     known = FIGURES["actuator"]
     unit = shown.number(0.0, known["paths.cap_filling.conductance"].kind)[1]
     title = "Flow paths, valve and throttle"
-    lines = ["", f"{title:<36}{'C':>16}{'b':>12}{'m':>12}{'fit error':>12}  unit of C"]
+    lines = ["", f"{title:<34}{'C':>14}{'b':>12}{'m':>12}{'fit error':>12}  unit of C"]
     lines.append("-" * len(lines[1]))
     for path in flow.PATHS:
         cells = [cell(known[f"paths.{flow.slug(path)}.{name}"], at, shown) for name in names]
         c, b, m, error = (item.number for item in cells)
-        lines.append(f"  {path:<34}{c:>16}{b:>12}{m:>12}{f'{error} {cells[3].unit}':>12}  {unit}")
+        lines.append(f"  {path:<32}{c:>14}{b:>12}{m:>12}{f'{error} {cells[3].unit}':>12}  {unit}")
     return lines
 
 
@@ -110,7 +110,7 @@ def _actuator(at: At, shown: Shown) -> list[str]:
     special: dict[str, Callable[[Sequence[Figure]], list[str]]] = {
         "Motion": lambda figures: _motion(figures, at, shown),
         "Exergy of a cycle": lambda _: _ledger(at, shown),
-        "From the meter to the load": lambda _: _upstream(at, shown),
+        "From the meter to the port": lambda _: _upstream(at, shown),
         "Shares of the supplied exergy": lambda _: [],
         "Exhaust loss": lambda _: [],
         "Flow paths": lambda _: _paths(at, shown),

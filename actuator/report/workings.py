@@ -81,8 +81,9 @@ def used_figures(figure: Figure, at: At) -> Iterator[Named]:
 
 def _inputs(answer: Answer, figure: Figure, at: At, shown: Shown) -> Iterator[Input]:
     for used in used_figures(figure, at):
+        apart = used.at.owner[len(at.owner) :]
         yield Input(
-            name=title(used.figure),
+            name=": ".join((*apart, title(used.figure))),
             path=used.name,
             value=shown.figure(used.figure, used.at),
             origin="computed",

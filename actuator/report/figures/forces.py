@@ -42,7 +42,6 @@ def _static(
     uses: tuple[str, ...] = (),
     direction: Direction = "",
     sources: tuple[str, ...] = ("own",),
-    group: str = "Static force",
     note: str = "",
 ) -> Figure:
     return Figure(
@@ -50,7 +49,7 @@ def _static(
         key=f"static.{name}",
         kind=alias if isinstance(alias, Kind) else kind(alias),
         label=label,
-        group=group,
+        group="Static force",
         formula=formula,
         sources=sources,
         inputs=inputs,
@@ -143,7 +142,6 @@ STATIC: tuple[Figure, ...] = (
             *_PRESSURES,
         ),
         uses=("static.load_extend", "static.load_retract"),
-        group="Size",
         note="Running friction and rod in proportion to the bore; no reserve where none is asked.",
     ),
 )
