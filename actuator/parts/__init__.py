@@ -1,7 +1,9 @@
 """Frozen parts, checked when they are built: what a document describes, in SI."""
 
-from actuator.parts.actuator import Actuator, Friction, Load, ProcessForce, Require, Throttle, Valve
+from actuator.parts.actuator import Actuator, Require
+from actuator.parts.load import Friction, Load, ProcessForce
 from actuator.parts.project import Compressor, Machine, Money, Plant, Project, Site
+from actuator.parts.valve import Throttle, Valve
 
 __all__ = [
     "Actuator",

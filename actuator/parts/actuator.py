@@ -1,4 +1,4 @@
-"""The actuator and what hangs on it: load, friction, valve, throttle, requirements."""
+"""The actuator: geometry, timing, requirements, and the parts that hang on it."""
 
 from __future__ import annotations
 
@@ -9,256 +9,26 @@ from typing import Annotated, Literal
 from actuator.errors import InputError, Problem
 from actuator.kinds import (
     AbsPressure,
-    Angle,
-    Conductance,
-    CriticalRatio,
     Entry,
     Force,
     HeatTransfer,
     Index,
     Length,
-    Mass,
     OpposingForce,
     Period,
-    Position,
     PositiveNumber,
     PositiveShare,
-    PositiveSpeed,
     Ratio,
-    SubsonicIndex,
     Time,
-    Viscous,
     Volume,
     check,
 )
+from actuator.parts.load import Friction, Load
+from actuator.parts.valve import Throttle, Valve
 
 ActuatorKind = Literal["double-acting"]
 Mounting = Literal["foot", "front flange", "rear flange", "rear pin", "front trunnion", "mid trunnion"]
 RodEnd = Literal["fixed-guided", "hinged-guided", "free"]
-ValveFunction = Literal["5/2 spring", "5/2 detent", "5/3 closed", "5/3 exhausted", "5/3 pressurised"]
-ThrottleKind = Literal["meter-out", "meter-in", "none"]
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class ProcessForce:
-    """A force that opposes extending between two positions."""
-
-    start: Annotated[Position, Entry("from", "Where the force begins, from the retracted end.", key="from")]
-    end: Annotated[Position, Entry("to", "Where the force ends, from the retracted end.", key="to")]
-    force: Annotated[OpposingForce, Entry("force", "Opposes extending between the two positions.")]
-
-    def __post_init__(self) -> None:
-        check(self)
-        if not self.end > self.start:
-            raise InputError(
-                Problem(path="to", given=f"{self.end:g} m", allowed=f"must lie beyond from = {self.start:g} m")
-            )
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Load:
-    """What the actuator moves and what opposes it."""
-
-    mass: Annotated[Mass, Entry("Moved mass", "Everything that moves, piston and rod included.", example="20 kg")]
-    inclination: Annotated[
-        Angle,
-        Entry("Inclination", "Above the horizontal; positive where extending lifts.", example="0 deg"),
-    ] = 0.0
-    guide_friction: Annotated[
-        Ratio,
-        Entry("Guide friction", "Coefficient of the external guide that carries the load.", example="0.1"),
-    ] = 0.0
-    extend_force: Annotated[
-        OpposingForce, Entry("Force extending", "Opposes extending over the whole stroke.", example="100 N")
-    ] = 0.0
-    retract_force: Annotated[
-        OpposingForce, Entry("Force retracting", "Opposes retracting over the whole stroke.", example="100 N")
-    ] = 0.0
-    constant_force: Annotated[
-        Force, Entry("Constant force", "Always acting, signed: positive pushes the rod out.", example="0 N")
-    ] = 0.0
-    process_force: Annotated[
-        tuple[ProcessForce, ...],
-        Entry("Process force", "Opposes extending between two positions, as in pressing or clamping."),
-    ] = ()
-
-    def __post_init__(self) -> None:
-        check(self)
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Friction:
-    """Friction of the seals and bearings of the cylinder."""
-
-    breakaway: Annotated[
-        OpposingForce,
-        Entry(
-            "Breakaway",
-            "Friction force that starting has to overcome.",
-            default="8 % of (p_s - p0)*A_cap, common practice, no source",
-            example="90 N",
-        ),
-    ]
-    coulomb: Annotated[
-        OpposingForce,
-        Entry(
-            "Running",
-            "Friction force while moving, without its viscous part.",
-            default="5 % of (p_s - p0)*A_cap, common practice, no source",
-            example="60 N",
-        ),
-    ]
-    viscous: Annotated[
-        Viscous,
-        Entry(
-            "Viscous",
-            "Friction per speed.",
-            default="0.6 N*s/m per mm of bore, common practice, no source",
-            example="30 N*s/m",
-        ),
-    ]
-    stribeck_speed: Annotated[
-        PositiveSpeed,
-        Entry(
-            "Stribeck speed",
-            "Speed over which breakaway falls to running friction.",
-            example="20 mm/s",
-            default="20 mm/s, common practice, no source",
-        ),
-    ] = 0.02
-
-    def __post_init__(self) -> None:
-        check(self)
-        if self.breakaway < self.coulomb:
-            raise InputError(
-                Problem(
-                    path="breakaway",
-                    given=f"{self.breakaway:g} N",
-                    allowed=f"must be at least the running friction, {self.coulomb:g} N",
-                )
-            )
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Valve:
-    """The directional valve: both paths of a connection, and its timing."""
-
-    supply_c: Annotated[
-        Conductance,
-        Entry("Supply C", "Sonic conductance, supply to cylinder port (ISO 6358).", example="2.0 dm3/(s*bar)"),
-    ]
-    supply_b: Annotated[
-        CriticalRatio,
-        Entry(
-            "Supply b",
-            "Critical back-pressure ratio of the supply path.",
-            default="0.3, common practice, no source",
-            example="0.30",
-        ),
-    ] = 0.3
-    exhaust_c: Annotated[
-        Conductance,
-        Entry(
-            "Exhaust C",
-            "Sonic conductance, cylinder port to atmosphere.",
-            default="the supply path's, common practice, no source",
-            example="2.0 dm3/(s*bar)",
-        ),
-    ]
-    exhaust_b: Annotated[
-        CriticalRatio,
-        Entry(
-            "Exhaust b",
-            "Critical back-pressure ratio of the exhaust path.",
-            default="the supply path's, common practice, no source",
-            example="0.30",
-        ),
-    ] = 0.3
-    m: Annotated[
-        SubsonicIndex,
-        Entry(
-            "Subsonic index m",
-            "Exponent of the subsonic branch, both paths.",
-            default="0.5, ISO 6358-1:2013, from memory",
-            example="0.5",
-        ),
-    ] = 0.5
-    function: Annotated[
-        ValveFunction,
-        Entry(
-            "Function",
-            "Ports, positions, and what brings the valve to rest.",
-            default="5/2 spring, common practice, no source",
-        ),
-    ] = "5/2 spring"
-    delay: Annotated[
-        Time,
-        Entry(
-            "Delay",
-            "From the command to the first opening.",
-            default="15 ms, common practice, no source",
-            example="15 ms",
-        ),
-    ] = 0.015
-    opening_time: Annotated[
-        Time,
-        Entry(
-            "Opening time",
-            "From the first opening to fully open.",
-            default="5 ms, common practice, no source",
-            example="5 ms",
-        ),
-    ] = 0.005
-
-    def __post_init__(self) -> None:
-        check(self)
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Throttle:
-    """One-way flow controls at the cylinder ports."""
-
-    kind: Annotated[
-        ThrottleKind,
-        Entry("Kind", "Which flow is metered: what leaves the cylinder, what enters it, or none."),
-    ] = "none"
-    extend_c: Annotated[
-        Conductance | None,
-        Entry("Extending C", "Conductance of the needle that acts while extending.", example="1.2 dm3/(s*bar)"),
-    ] = None
-    retract_c: Annotated[
-        Conductance | None,
-        Entry("Retracting C", "Conductance of the needle that acts while retracting.", example="1.2 dm3/(s*bar)"),
-    ] = None
-    b: Annotated[
-        CriticalRatio,
-        Entry(
-            "b",
-            "Critical back-pressure ratio of needle and check valve.",
-            default="0.3, common practice, no source",
-            example="0.3",
-        ),
-    ] = 0.3
-    free_c: Annotated[
-        Conductance | None,
-        Entry("Free C", "Conductance in the free direction, through the check valve.", example="3 dm3/(s*bar)"),
-    ] = None
-
-    def __post_init__(self) -> None:
-        check(self)
-        if self.kind != "none":
-            missing = [key for key in ("extend_c", "retract_c", "free_c") if getattr(self, key) is None]
-            if missing:
-                raise InputError(
-                    *(
-                        Problem(
-                            path=key,
-                            given="",
-                            allowed=f'needed with kind = "{self.kind}", e.g. "1.2 dm3/(s*bar)"',
-                        )
-                        for key in missing
-                    )
-                )
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
