@@ -10,7 +10,6 @@ from actuator.errors import InputError, Problem
 from actuator.kinds import (
     AbsPressure,
     Entry,
-    Force,
     HeatTransfer,
     Index,
     Length,
