@@ -90,7 +90,7 @@ ENERGY = {
     "kWh": "kWh",
     "MWh": "MWh",
     "ft*lbf": "ft*lbf",
-    "Btu": "BTU",
+    "Btu": "Btu_it",
 }
 VOLUME_FLOW = {
     f"{volume}/{time}": f"{VOLUME[volume]}/{TIME[time]}"
@@ -212,7 +212,7 @@ DIMENSIONS: dict[str, Dimension] = {
         forms={
             **dict.fromkeys(("W/(m2*K)", "W/m2/K", "W/(m2K)", "W/m2K"), "W/(m**2*kelvin)"),
             **dict.fromkeys(
-                ("Btu/(h*ft2*degF)", "BTU/(h*ft2*degF)", "Btu/(hr*ft2*degF)"), "BTU/(hour*ft**2*delta_degF)"
+                ("Btu/(h*ft2*degF)", "BTU/(h*ft2*degF)", "Btu/(hr*ft2*degF)"), "Btu_it/(hour*ft**2*delta_degF)"
             ),
         },
         si=("W/(m2*K)",),
