@@ -211,9 +211,9 @@ def _parsed(source: str) -> tuple[dict[str, Any], Problem | None]:
     except ValueError as fault:
         place = _AT_LINE.search(str(fault))
         rows = source.split("\n")
-        line = int(place[1]) if place and place[1] else max(len(source.rstrip().split("\n")), 1)
+        line = 0 if place is None else int(place[1] or len(source.rstrip().split("\n")))
         reason = _AT_LINE.sub("", str(fault))
-        given = rows[line - 1].strip()[:80] if line <= len(rows) else ""
+        given = rows[line - 1].strip()[:80] if 0 < line <= len(rows) else ""
         return {}, Problem(
             path="document",
             given=given,

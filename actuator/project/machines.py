@@ -57,7 +57,8 @@ def _machine(walk: Walk, steps: Steps, here: Any, site: Site) -> Machine | None:
         return None
     walk.needed(Machine, steps, values)
     values.setdefault("supply_temperature", site.ambient_temperature)
-    _pressure(walk, (*steps, "supply_pressure"), values.get("supply_pressure"), None)
+    if not _pressure(walk, (*steps, "supply_pressure"), values.get("supply_pressure"), None):
+        values.pop("supply_pressure", None)  # what rests on it is not judged
     listed = values.pop("actuators", None)
     where = (*steps, "actuator")
     if not isinstance(listed, list) or not listed:
@@ -75,18 +76,21 @@ def _machine(walk: Walk, steps: Steps, here: Any, site: Site) -> Machine | None:
     return machine
 
 
-def _pressure(walk: Walk, at: Steps, value: float | None, supply: float | None) -> None:
-    """A supply pressure has to stand above the ambient, a return pressure not above the supply."""
+def _pressure(walk: Walk, at: Steps, value: float | None, supply: float | None) -> bool:
+    """Whether a supply stands above the ambient pressure, and a return pressure not above the supply."""
     if value is None:
-        return
+        return True
     if value <= walk.reading.ambient_pressure:
         spec = fields(Site)["ambient_pressure"]
         ambient = walk.said(("site", "ambient_pressure"), walk.reading.ambient_pressure, spec)
         walk.problem(at, walk.at(at), f'must be above the ambient pressure, {ambient}; e.g. "6 bar gauge"')
-    elif supply is not None and value > supply:
+        return False
+    if supply is not None and value > supply:
         spec = fields(Machine)["supply_pressure"]
         said = walk.said((*at[:2], "supply_pressure"), supply, spec)
         walk.problem(at, walk.at(at), f"must not be above the supply pressure, {said}")
+        return False
+    return True
 
 
 def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator | None:
