@@ -27,7 +27,7 @@ from actuator.stroke.events import (
 )
 from actuator.stroke.steppers import error_norm, explicit_step, implicit_step, jacobian
 
-_STEP_LIMIT = 400000.0
+_STEP_LIMIT = 60000.0
 
 
 def step(

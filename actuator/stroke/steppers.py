@@ -158,9 +158,10 @@ def jacobian(
                 jac[column + i] = 0.0
             continue
         if j == at.X:
-            step = 1e-7 * par[at.STROKE]
-            if y[at.X] + step > par[at.STROKE]:
-                step = -step
+            # a share of the shorter air column, so that neither pressure moves by more than that share
+            cap = par[at.DEAD_CAP] / par[at.AREA_CAP] + y[at.X]
+            rod = par[at.DEAD_ROD] / par[at.AREA_ROD] + par[at.STROKE] - y[at.X]
+            step = 1e-7 * min(cap, rod)
         elif j == at.V:
             step = 1e-7 * (abs(y[at.V]) + 0.1) * mode[at.DIRECTION]
         else:
