@@ -1,0 +1,158 @@
+"""One entry of the document in one row: label, text as typed, and what is wrong with it below."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from textwrap import wrap
+from typing import TYPE_CHECKING, ClassVar
+
+from rich.segment import Segment
+from textual import events
+from textual.binding import Binding, BindingType
+from textual.geometry import Region
+from textual.message import Message
+from textual.reactive import reactive
+from textual.strip import Strip
+from textual.widgets import Input
+
+if TYPE_CHECKING:
+    from actuator.project.schema import SheetField
+
+
+class Field(Input):
+    """A field of the sheet. Its text is the document's; it is never corrected or held back."""
+
+    BINDINGS: ClassVar[list[BindingType]] = [
+        Binding("up", "step(-1)", "Field above", show=False),
+        Binding("down", "step(1)", "Field below", show=False),
+        Binding("ctrl+up", "turn(-1)", "Choice before", show=False),
+        Binding("ctrl+down", "turn(1)", "Choice after", show=False),
+        Binding("enter", "choose", "Choices", show=False),
+    ]
+    COMPONENT_CLASSES: ClassVar[set[str]] = {"field--label", "field--problem"}
+    DEFAULT_CSS = """
+    Field, Field:focus, Field.-invalid {
+        height: 1;
+        border: none;
+        padding: 0 2 0 24;
+        background: transparent;
+    }
+    Field:focus { background: $boost; }
+    Field > .field--label { color: $foreground 75%; }
+    Field:focus > .field--label { color: $foreground; text-style: bold; }
+    Field > .field--problem { color: $text-error; }
+    """
+
+    label_width: reactive[int] = reactive(22, init=False)
+    problem: reactive[str] = reactive("", init=False)
+
+    @dataclass
+    class Choose(Message):
+        """The user wants to see the choices of a field."""
+
+        field: Field
+
+        @property
+        def control(self) -> Field:
+            """The field."""
+            return self.field
+
+    def __init__(self, spec: SheetField, text: str) -> None:
+        super().__init__(text, select_on_focus=False)
+        self.spec = spec
+
+    def on_mount(self) -> None:
+        """Lay out for the first time."""
+        self._fit()
+
+    def address(self, spec: SheetField, text: str) -> None:
+        """Stand for another path of the same shape, without being built anew."""
+        self.spec = spec
+        self.put(text)
+        self._fit()
+        self.refresh()
+
+    def put(self, text: str) -> None:
+        """Show the document's text without reporting it as typed."""
+        if self.value != text:
+            with self.prevent(Input.Changed):
+                self.value = text
+
+    def watch_label_width(self) -> None:
+        """Move the text to the right of the label."""
+        self._fit()
+
+    def watch_problem(self) -> None:
+        """Grow by the lines of the problem."""
+        self._fit()
+        self.refresh(layout=True)
+
+    def on_resize(self, event: events.Resize) -> None:  # noqa: ARG002
+        """Wrap the problem and cut the hint to the width."""
+        self._fit()
+
+    def _fit(self) -> None:
+        """Set padding, height and hint to what there is room for."""
+        self.styles.padding = (0, 2, 0, self.label_width + 2)
+        self.styles.height = 1 + len(self._told())
+        room = max(self.outer_size.width - self.label_width - 4, 8)
+        hint = self.spec.default or ("left out" if not self.spec.example else f"e.g. {self.spec.example}")
+        self.placeholder = hint if len(hint) <= room else hint[: room - 1] + "…"
+
+    def _told(self) -> list[str]:
+        """The problem in lines of the field's width."""
+        if not self.problem:
+            return []
+        return wrap(self.problem, max(self.outer_size.width - 5, 16), break_on_hyphens=False)
+
+    def render_lines(self, crop: Region) -> list[Strip]:
+        """Label, the input's own line, a mark for choices, then the problem."""
+        width, left = self.outer_size.width, self.label_width + 2
+        plain = self.rich_style
+        label = self.get_component_rich_style("field--label")
+        bad = self.get_component_rich_style("field--problem")
+        middle = super().render_lines(Region(0, 0, width, 1))[0].crop(left, width - 2)
+        sign = "!" if self.problem else "›" if self.has_focus else " "
+        text = self.spec.label
+        if len(text) > self.label_width:
+            text = text[: self.label_width - 1] + "…"
+        tail = " ▾" if self.spec.choices else "  "
+        head = Strip(
+            [
+                Segment(sign, bad if self.problem else label),
+                Segment(text.ljust(self.label_width) + " ", label),
+            ]
+        )
+        rows = [Strip.join([head, middle, Strip([Segment(tail, label)])])]
+        for number, line in enumerate(self._told()):
+            start = "  └ " if number == 0 else "    "
+            rows.append(Strip([Segment((start + line)[:width].ljust(width), bad)]))
+        blank = Strip.blank(width, plain)
+        rows += [blank] * max(0, crop.bottom - len(rows))
+        return [row.crop(crop.x, crop.right) for row in rows[crop.y : crop.bottom]]
+
+    def action_step(self, by: int) -> None:
+        """Go to the field above or below."""
+        if by < 0:
+            self.screen.focus_previous(Field)
+        else:
+            self.screen.focus_next(Field)
+
+    def action_turn(self, by: int) -> None:
+        """Take the choice before or after, as if it were typed."""
+        choices = self.spec.choices
+        if choices:
+            place = choices.index(self.value) + by if self.value in choices else 0
+            self.value = choices[place % len(choices)]
+
+    def action_choose(self) -> None:
+        """Ask for the list of choices; go on to the next field where there is none."""
+        if self.spec.choices:
+            self.post_message(self.Choose(self))
+        else:
+            self.action_step(1)
+
+    def on_click(self, event: events.Click) -> None:
+        """Open the list where its mark is clicked."""
+        if self.spec.choices and event.x >= self.outer_size.width - 2:
+            self.post_message(self.Choose(self))
