@@ -156,8 +156,8 @@ class Compressor:
         Entry(
             "Isentropic efficiency",
             "Of each stage.",
-            default="70 %, common practice, no source",
-            example="70 %",
+            default="80 %, common practice, no source",
+            example="80 %",
         ),
     ] = 0.80
     polytropic_efficiency: Annotated[
@@ -245,7 +245,7 @@ class Money:
 class Project:
     """Everything that one document describes."""
 
-    title: Annotated[str, Entry("Title", "What the document is about.", default="empty")] = ""
+    title: Annotated[str, Entry("Title", "What the document is about.", default="empty", example='"Carton line, hall B"')] = ""
     site: Annotated[Site, Entry("Site", "Where the machines stand.")] = field(default_factory=Site)
     machines: Annotated[tuple[Machine, ...], Entry("Machines", "The machines.", key="machine")] = ()
     plant: Annotated[Plant, Entry("Plant", "What feeds the machines.")] = field(default_factory=Plant)
