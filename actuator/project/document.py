@@ -150,7 +150,7 @@ def load(path: Path) -> Document:
     OSError
         Where the file cannot be read.
     """
-    return parse(path.read_bytes().decode("utf-8", "surrogateescape"), path)
+    return parse(path.read_bytes().decode("utf-8", "surrogateescape").removeprefix("\ufeff"), path)
 
 
 def parse(text: str, path: Path | None = None) -> Document:
