@@ -190,7 +190,7 @@ def cycle(
             tried += 1
             h = taken * (max(0.2, 0.9 * norm ** (-power)) if norm < 1e12 else 0.2)
         if not implicit:
-            limp = limp + 1 if eigen > 3.0 else max(limp - 2, 0)
+            limp = limp + 1 if eigen > 1.5 else max(limp - 1, 0)
             if limp >= 12:
                 mode[at.STIFF] = 1.0
 

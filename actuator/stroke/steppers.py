@@ -94,7 +94,7 @@ def explicit_step(
     Returns
     -------
     float
-        h times the estimate of the dominant eigenvalue, above about 3.3 where stability limits the step. [1]
+        h times the estimate of the dominant eigenvalue; stability ends at about 3.3. [1]
 
     References
     ----------
