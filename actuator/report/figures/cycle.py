@@ -192,7 +192,7 @@ _ITEMS: tuple[tuple[str, str, str, str], ...] = (
         "heat",
         "Heat to the walls",
         "∮ Σ h·A_w·(T − T₀)²/T dt,  A_w = π·D·x + 2·A",
-        "With a polytropic index: −∮ Q̇·(1 − T₀/T) dt with the heat it implies; may be negative.",
+        "With a polytropic index: −∮ (1 − T₀/T) dQ with the heat it implies; may be negative.",
     ),
     (
         "exhaust",
