@@ -36,11 +36,21 @@ def rewritten(source: str, edits: Mapping[str, str], tree: Mapping[str, Any]) ->
         for path, text in edits.items():
             _set(kept, steps_of(path), text)
         written = kept.as_string()
-        if tomllib.loads(written) == tree:
+        if _filled(tomllib.loads(written)) == _filled(tree):
             return written
     except (TOMLKitError, ValueError, KeyError, IndexError, TypeError, AttributeError):
         pass
     return tomlkit.dumps(_plain(tree))
+
+
+def _filled(value: Any) -> Any:
+    """A tree without its empty tables, which mean the same as none."""
+    if isinstance(value, list):
+        return [_filled(item) for item in value]
+    if not isinstance(value, Mapping):
+        return value
+    inside = {key: _filled(item) for key, item in value.items()}
+    return {key: item for key, item in inside.items() if item != {}}
 
 
 def _plain(value: Any) -> Any:
@@ -74,7 +84,9 @@ def _set(here: Any, steps: Steps, text: str) -> None:
         if not isinstance(last, int) and last in here:
             del here[last]
         return
-    here[last if not isinstance(last, int) else last - 1] = _plain(value_of(steps, text))
+    value = value_of(steps, text)
+    item = tomlkit.value(text.strip()) if isinstance(value, (list, dict)) else _plain(value)
+    here[last if not isinstance(last, int) else last - 1] = item
 
 
 def _empty(steps: Steps, parent: Any) -> Any:
