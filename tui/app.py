@@ -8,6 +8,7 @@ import signal
 import threading
 from collections.abc import Iterable
 from dataclasses import dataclass
+from pathlib import Path
 from typing import TYPE_CHECKING, Any, ClassVar
 
 from textual import on, work
@@ -46,7 +47,7 @@ DRAFT = 1.0
 class Design(App[int], inherit_bindings=False):
     """Edit a document and watch its answer. The session is the only state; screens show it."""
 
-    CSS_PATH = "app.tcss"
+    CSS_PATH = Path(__file__).with_name("app.tcss")
     TITLE = "Pneumatic actuator design"
     BINDINGS: ClassVar[list[BindingType]] = list(actions.bindings())
     COMMAND_PALETTE_BINDING = "ctrl+p"
@@ -84,8 +85,13 @@ class Design(App[int], inherit_bindings=False):
         self.theme = self.settings.theme or self.theme
         self.set_keymap(dict(self.settings.keys))
         await self.push_screen(self.desk)
-        self.watch_session(self.session)
-        self.call_after_refresh(self.do, "draft.offer")
+        self.show_place()
+        self.desk.call_after_refresh(self._begin)
+
+    def _begin(self) -> None:
+        """Compute only once the first picture stands."""
+        self.solve(self.session, None)
+        self.do("draft.offer")
 
     def _stopped(self, number: int) -> None:
         self.keep_draft()
@@ -137,7 +143,9 @@ class Design(App[int], inherit_bindings=False):
         problems: tuple[Problem, ...] = event.answer.problems if event.answer else ()
         if event.answer is not None and event.answer.analysis is not None:
             self.answer = event.answer
-            self.desk.show_state("up to date", sound=True)
+            self.desk.show_waiting("")
+            self.show_view()
+            self.desk.show_state("up to date" + (", pinned" if self.pin else ""), sound=True)
         else:
             count = len(problems)
             why = f"{count} problem{'' if count == 1 else 's'}" if count else "calculation failed"
@@ -145,8 +153,8 @@ class Design(App[int], inherit_bindings=False):
         if event.fault:
             problems = (Problem(path="calculation", given="", allowed=event.fault),)
         self.desk.show_problems(problems)
-        self.desk.show_waiting("" if self.answer else "No figures until the problems above are put right.")
-        self.show_view()
+        if self.answer is None:
+            self.desk.show_waiting("No figures until the problems above are put right.")
 
     @work(thread=True, exclusive=True, group="draft", exit_on_error=False)
     def _keep_later(self, session: Session) -> None:

@@ -119,6 +119,8 @@ def turn_pin(app: Design) -> None:
         app.pin = app.answer
         app.notify("Pinned: each figure shows its difference to this state.")
     app.show_view()
+    if app.answered == app.session.revision and not app.desk.problems:
+        app.desk.show_state("up to date, pinned" if app.pin else "up to date", sound=True)
 
 
 def turn_units(app: Design) -> None:

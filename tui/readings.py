@@ -75,7 +75,12 @@ def working(app: Design) -> None:
             parts.append(render(worked(answer, machine, actuator, key, system), width))
         return ("\n" + "─" * width + "\n\n").join(parts)
 
-    app.push_screen(Reader(f"Working: {row.label}", text))
+    app.push_screen(Reader(f"Working: {plain_label(row.label)}", text))
+
+
+def plain_label(label: str) -> str:
+    """A row's label without the sign of a verdict."""
+    return label.lstrip("✓✗? ")
 
 
 def cautions(app: Design) -> None:
@@ -93,7 +98,7 @@ def cautions(app: Design) -> None:
     def text(width: int) -> str:
         parts = []
         if row is not None and row.figures:
-            parts.append(f"With {row.label}" if first else f"{row.label}: no caution of its own.")
+            parts.append(f"With {plain_label(row.label)}" if first else f"{plain_label(row.label)}: no caution of its own.")
         parts += [_told(item, width) for item in first]
         if rest:
             parts.append("With this actuator")

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 from actuator.analysis import Criterion
@@ -50,7 +51,7 @@ def verdicts(view: View, plain: bool = False) -> tuple[Item, ...]:
 
 def _key(item: Criterion) -> tuple[int, float]:
     margin = item.margin
-    return _ORDER[item.verdict], 0.0 if isinstance(margin, Refusal) else margin
+    return _ORDER[item.verdict], math.inf if isinstance(margin, Refusal) else margin
 
 
 def _words(item: Criterion, view: View) -> str:
