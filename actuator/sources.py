@@ -84,7 +84,12 @@ SCFM = Source(
 ISO_80000 = Source(
     key="iso80000", title="ISO 80000-3, Quantities and units: space and time", edition="2019", place="g_n"
 )
-ISO_2533 = Source(key="iso2533", title="ISO 2533, Standard atmosphere", edition="1975", place="101 325 Pa")
+ISO_2533 = Source(
+    key="iso2533",
+    title="ISO 2533, Standard atmosphere",
+    edition="1975",
+    place="101 325 Pa; R = 287.053 J/(kg K), exponent 1.4",
+)
 IEC_60534 = Source(
     key="iec60534",
     title="IEC 60534-2-1, Industrial-process control valves: sizing equations",

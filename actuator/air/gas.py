@@ -5,9 +5,9 @@ from __future__ import annotations
 from actuator.air.saturation import saturation_pressure_scalar
 
 R_AIR = 287.05
-"""Gas constant of dry air, 8.314462/28.965; Source ``moran``. [J/(kg*K)]"""
+"""Gas constant of dry air, 287.053 in the standard atmosphere; Source ``iso2533``. [J/(kg*K)]"""
 GAMMA = 1.4
-"""Isentropic exponent of air near 20 degC; Source ``moran``. [1]"""
+"""Isentropic exponent of air; Source ``iso2533``. [1]"""
 CV = R_AIR / (GAMMA - 1.0)
 """Specific heat at constant volume. [J/(kg*K)]"""
 CP = GAMMA * CV

@@ -4,11 +4,29 @@ from __future__ import annotations
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
-from scipy.special import exprel
 
 from actuator.air.gas import GAMMA
 
 Array = NDArray[np.float64]
+
+
+def exprel(z: ArrayLike) -> Array:
+    """Relative growth (eᶻ − 1)/z, smooth through z = 0, accurate to 1e-15 on both sides.
+
+    Parameters
+    ----------
+    z : array_like
+        Any number. [1]
+
+    Returns
+    -------
+    ndarray
+        1 at zero. [1]
+    """
+    z = np.asarray(z, dtype=np.float64)
+    safe = np.where(z == 0.0, 1.0, z)
+    result: Array = np.where(z == 0.0, 1.0, np.expm1(safe) / safe)
+    return result
 
 
 def polytropic_work(p1: ArrayLike, v1: ArrayLike, v2: ArrayLike, index: ArrayLike) -> Array:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from actuator.air.gas import DRY_DENSITY_ANR, P_ANR, R_AIR
+from actuator.air.gas import P_ANR, R_AIR
 from actuator.air.states import anr_volume
 
 
@@ -231,7 +231,7 @@ def _words(
     hand = hand_formula(textbook, temp_supply)
     lines.append(
         f"The hand formula V·p/100 kPa reads {hand * 1e3:.4g} L "
-        f"({100.0 * (hand / anr_volume(textbook) - 1.0):+.1f} %): an ANR litre holds "
-        f"{DRY_DENSITY_ANR:.4g} g of dry air, the rest of it is vapour."
+        f"({100.0 * (hand / anr_volume(textbook) - 1.0):+.1f} %): it leaves the supply temperature and the "
+        "vapour in a litre ANR out of account."
     )
     return " ".join(lines)

@@ -14,7 +14,9 @@ Element = tuple[float, float, float]
 """Sonic conductance C [m³/(s·Pa)], critical ratio b and subsonic index m of one element."""
 
 LARGEST_RATIO = 0.9
+"""Highest critical ratio that a fit may take, as in the document. [1]"""
 LEAST_INDEX, LARGEST_INDEX = 0.3, 1.0
+"""Range of the subsonic index that a fit may take, as in the document. [1]"""
 _GRID = np.linspace(-1.0, 1.0, 5)
 _OFFSETS_B, _OFFSETS_M = (item.ravel() for item in np.meshgrid(_GRID, _GRID, indexing="ij"))
 _LEVELS = np.sin(np.linspace(0.04, 1.0, 13) * math.pi / 2.0)

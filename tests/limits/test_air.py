@@ -9,6 +9,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 from scipy.integrate import quad
+from scipy.special import exprel as reference_exprel
 
 from actuator.air.exergy import flow_exergy, stored_exergy, unused_share
 from actuator.air.gas import CP, CV, GAMMA, R_AIR, TEMP_ANR
@@ -24,6 +25,7 @@ from actuator.air.states import STATES, anr_volume, dry_density, dry_density_at,
 from actuator.air.work import (
     end_pressure,
     end_temperature,
+    exprel,
     piston_force,
     polytropic_heat,
     polytropic_index,
@@ -45,6 +47,14 @@ def test_work_is_the_integral_of_p_dv(p: float, v1: float, v2: float, index: flo
     exponent = 1.0 - index  # in ln V the integrand p·V is smooth
     area, _ = quad(lambda x: p * v1 * math.exp(exponent * x), 0.0, math.log(v2 / v1), epsabs=0.0, epsrel=1e-11)
     assert float(polytropic_work(p, v1, v2, index)) == pytest.approx(area, rel=1e-8, abs=1e-12 * p * v1)
+
+
+@quick
+@given(st.floats(-50.0, 50.0))
+def test_relative_growth_is_that_of_scipy(z: float) -> None:
+    assert float(exprel(z)) == pytest.approx(float(reference_exprel(z)), rel=1e-15)
+    assert float(exprel(z * 1e-12)) == pytest.approx(float(reference_exprel(z * 1e-12)), rel=1e-15)
+    assert exprel(0.0) == 1.0
 
 
 @pytest.mark.parametrize("off", [1e-3, 1e-6, 1e-9, 1e-12, 0.0])

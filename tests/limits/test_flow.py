@@ -148,6 +148,12 @@ def test_chain_end_tells_what_does_not_pass() -> None:
     assert chain_end([(UNIT, 0.3, 0.5)], UNIT) == 0.3
 
 
+def test_an_element_that_chokes_only_against_vacuum() -> None:
+    # b = 0: choked it leaves nothing to the next, so two of them in a row choke in the second, q = √(1 − q²)
+    assert chain_conductance([(UNIT, 0.0, 0.5), (UNIT, 0.0, 0.5)]) == pytest.approx(UNIT / math.sqrt(2.0), rel=1e-9)
+    assert fit_chain([(UNIT, 0.0, 0.5), (UNIT, 0.0, 0.5)]).error < 0.01
+
+
 @quick
 @given(st.lists(elements, min_size=2, max_size=4))
 def test_parallel_elements_add(side_by_side: list[Element]) -> None:
