@@ -52,6 +52,10 @@ _SPELLED = str.maketrans(
     }
 )
 """Signs of the formulas in ASCII."""
+_CONTROLS = str.maketrans(
+    {chr(code): f"\\x{code:02x}" for code in (*range(32), *range(127, 160)) if chr(code) not in "\n\t"}
+)
+"""Characters that would steer a terminal, which a name in a document may hold; shown as escapes."""
 
 
 def encoding_of(stream: TextIO) -> str:
@@ -67,6 +71,8 @@ def is_unicode(stream: TextIO) -> bool:
 def fitted(text: str, encoding: str) -> str:
     """Text that an encoding can take: signs of the formulas spelled out, the rest as escapes.
 
+    Control characters other than tabs and line ends become escapes too.
+
     Parameters
     ----------
     text : str
@@ -76,8 +82,9 @@ def fitted(text: str, encoding: str) -> str:
     Returns
     -------
     str
-        The same text where the encoding takes it.
+        The same text where the encoding takes all of it.
     """
+    text = text.translate(_CONTROLS)
     try:
         text.encode(encoding)
     except UnicodeEncodeError:

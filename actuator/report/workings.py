@@ -15,6 +15,9 @@ from actuator.report.names import Named
 from actuator.report.shown import Shown, shown_for
 from actuator.unit_table import System
 
+LONGEST_NAME, LONGEST_VALUE = 36, 24
+"""Widest columns of names and values; what is longer pushes its line to the right. [1]"""
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Input:
@@ -180,8 +183,8 @@ def render(found: Working, width: int = 100) -> str:
     lines = [found.name, f"{found.label} = {found.value}", "", "Formula", *_wrapped(found.formula, width)]
     if found.inputs:
         lines += ["", "Put in"]
-        name = max(len(item.name) for item in found.inputs)
-        value = max(len(item.value) for item in found.inputs)
+        name = min(max(len(item.name) for item in found.inputs), LONGEST_NAME)
+        value = min(max(len(item.value) for item in found.inputs), LONGEST_VALUE)
         for item in found.inputs:
             text = f"{item.name:<{name}}  {item.value:>{value}}  {item.origin}, {item.path}"
             lines += textwrap.wrap(text, width, initial_indent="  ", subsequent_indent=" " * (name + value + 6))

@@ -51,6 +51,13 @@ def _solved() -> Answer:
     return work_out(demo())
 
 
+@pytest.fixture(name="once")
+def _once(solved: Answer, monkeypatch: pytest.MonkeyPatch) -> Answer:
+    """Every command shows this one answer, computed once."""
+    monkeypatch.setattr("actuator.answer.work_out", lambda _: solved)
+    return solved
+
+
 ENGINE = ("simulation", "difference", "remarks")
 """Keys whose text tells which engine computed, or repeats numbers of the cycle."""
 
@@ -82,24 +89,21 @@ def test_assess_writes_json_alone_on_stdout(plant: Path, capsys: pytest.CaptureF
     assert status == (0 if verdicts == {"met"} else 3)
 
 
-def test_json_csv_text_and_workings_agree(
-    plant: Path, solved: Answer, capsys: pytest.CaptureFixture[str], monkeypatch: pytest.MonkeyPatch
-) -> None:
-    monkeypatch.setattr("actuator.answer.work_out", lambda _: solved)  # one answer, so digits are the same
+def test_json_csv_text_and_workings_agree(plant: Path, once: Answer, capsys: pytest.CaptureFixture[str]) -> None:
     main(["assess", str(plant), "--json"])
     data = json.loads(capsys.readouterr().out)
     main(["assess", str(plant), "--csv"])
     rows = list(csv.DictReader(io.StringIO(capsys.readouterr().out)))
     main(["assess", str(plant), "--units", "si"])
     text = capsys.readouterr().out
-    analysis, project = solved.analysis, solved.project
+    analysis, project = once.analysis, once.project
     assert analysis is not None
     assert project is not None
     shown = shown_for(project)
     for item, row in zip(all_figures(analysis), rows, strict=True):
         at = item.at
         assert (row["figure"], row["machine"]) == (item.figure.key, (*at.owner, "", "")[0])
-        found = working(solved, at.machine_index, at.actuator_index, item.figure.key)
+        found = working(once, at.machine_index, at.actuator_index, item.figure.key)
         value = _of_json(data, at, item.figure.json_path)
         if row["refused"]:
             assert value == {"refused": row["refused"]}
@@ -216,7 +220,7 @@ def test_new_where_it_cannot_write(tmp_path: Path, capsys: pytest.CaptureFixture
     assert "cannot be written" in capsys.readouterr().err
 
 
-def test_explain_lists_and_explains(plant: Path, capsys: pytest.CaptureFixture[str]) -> None:
+def test_explain_lists_and_explains(plant: Path, once: Answer, capsys: pytest.CaptureFixture[str]) -> None:
     assert main(["explain", str(plant), "--units", "si"]) == 0
     names = [line.split("  ")[0] for line in capsys.readouterr().out.splitlines()]
     assert '"Tray packer".Pusher.extend.stroke_time' in names
@@ -227,7 +231,7 @@ def test_explain_lists_and_explains(plant: Path, capsys: pytest.CaptureFixture[s
     assert "typed, machine.2.actuator.1.require.force_at_end" in out
 
 
-def test_explain_refuses_what_it_cannot_tell(plant: Path, capsys: pytest.CaptureFixture[str]) -> None:
+def test_explain_refuses_what_it_cannot_tell(plant: Path, once: Answer, capsys: pytest.CaptureFixture[str]) -> None:
     assert main(["explain", str(plant), "extend.stroke_time", "--units", "si"]) == 2
     err = capsys.readouterr().err
     assert "names several figures; write one of" in err

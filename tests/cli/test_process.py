@@ -11,7 +11,7 @@ from pathlib import Path
 
 import pytest
 
-from actuator.project.document import demo
+from actuator.project.document import template
 
 ROOT = Path(__file__).parents[2]
 HEAVY = ("numpy", "scipy", "pint", "textual", "numba", "pandas", "tomlkit", "rich")
@@ -34,7 +34,7 @@ def run(*arguments: str, **changes: str) -> subprocess.CompletedProcess[bytes]:
 @pytest.fixture(name="plant", scope="module")
 def _plant(tmp_path_factory: pytest.TempPathFactory) -> Path:
     path = tmp_path_factory.mktemp("plant") / "plant.toml"
-    path.write_text(demo().to_toml(), encoding="utf-8")
+    path.write_text(template("si"), encoding="utf-8")
     return path
 
 

@@ -32,6 +32,7 @@ def test_signs_of_every_formula_have_a_spelling_in_ascii() -> None:
         ("4·Bänke", "latin-1", "4·Bänke"),
         ("Bänke", "ascii", "B\\xe4nke"),
         ("file\udcff", "utf-8", "file\\udcff"),
+        ("red \x1b[31m\x9b\r name\n", "utf-8", "red \\x1b[31m\\x9b\\x0d name\n"),
     ],
 )
 def test_text_is_fitted_to_the_encoding(text: str, encoding: str, shown: str) -> None:

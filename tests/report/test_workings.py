@@ -30,6 +30,7 @@ def test_every_figure_of_an_answer_has_a_working_that_renders() -> None:
         text = render(found)
         assert text.startswith(item.name + "\n")
         assert max(len(line) for line in text.splitlines()) <= 100, item.name
+        assert len(text.splitlines()) < 150, item.name
 
 
 def test_origins_say_typed_default_or_computed() -> None:
