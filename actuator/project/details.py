@@ -8,6 +8,7 @@ from typing import Any
 from actuator import kinds
 from actuator.parts import Actuator, Friction, Load, ProcessForce, Require, Throttle, Valve
 from actuator.project.fields import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
+from actuator.project.limits import beyond
 from actuator.project.paths import Steps
 from actuator.project.walk import Values, Walk
 
@@ -113,13 +114,9 @@ def _conductance(walk: Walk, steps: Steps, family: str, here: Any, values: Value
         value = values.pop(f"{family}_{way.suffix}", None)
         if value is not None:
             values[f"{family}_c"] = _converted(way.suffix, value, values[f"{family}_b"])
-            values_kind = kinds.kind_of(kinds.Conductance)
-            if values_kind.fault(values[f"{family}_c"]):
-                walk.problem(
-                    (*steps, f"{family}_{way.suffix}"),
-                    value,
-                    "gives no conductance that can be reckoned with",
-                )
+            if beyond(values[f"{family}_c"], kinds.kind_of(kinds.Conductance), walk.reading):
+                at = (*steps, f"{family}_{way.suffix}")
+                walk.problem(at, walk.at(at), f'is out of proportion; write it as {keys[0]} = "2.0 dm3/(s*bar)"')
 
 
 def _converted(suffix: str, value: float, b: float) -> float:

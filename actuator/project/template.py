@@ -50,6 +50,7 @@ _VALUES: dict[str, tuple[str, str]] = {
     _AT + "load.mass": ("15 kg", "33 lb"),
     _AT + "load.inclination": ("0 deg", "0 deg"),
     _AT + "load.guide_friction": ("0.1", "0.1"),
+    _AT + "load.extend_force": ("200 N", "45 lbf"),
     _AT + "valve.supply_c": ("2.0 dm3/(s*bar)", "2.0 dm3/(s*bar)"),
     _AT + "valve.delay": ("15 ms", "15 ms"),
     _AT + "require.stroke_time": ("1.2 s", "1.2 s"),

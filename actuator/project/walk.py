@@ -11,6 +11,7 @@ from actuator.kinds import FieldSpec
 from actuator.project import paths
 from actuator.project.document import Document, told
 from actuator.project.fields import fields
+from actuator.project.limits import beyond
 from actuator.project.locate import line_of
 from actuator.project.paths import Steps
 from actuator.unit_table import DIMENSIONS
@@ -110,12 +111,17 @@ class Walk:
             self.problem(steps, value, f"must be a quantity: {_form(spec)}")
         else:
             assert spec.kind is not None
+            typed = value if isinstance(value, str) else told(value).replace("_", "")
             try:
-                read_value = read(told(value), spec.kind, self.reading)
+                number = read(typed, spec.kind, self.reading)
             except UnitFault as fault:
                 self.problem(steps, value, str(fault))
                 return
-            values[spec.name] = int(read_value) if spec.is_count else read_value
+            fault_text = beyond(number, spec.kind, self.reading)
+            if fault_text:
+                self.problem(steps, value, fault_text)
+                return
+            values[spec.name] = int(number) if spec.is_count else number
 
     def is_gauge(self, value: Any, spec: FieldSpec) -> bool:
         """Whether a typed pressure counts from the ambient one."""

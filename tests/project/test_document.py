@@ -16,7 +16,7 @@ from actuator.errors import InputError
 from actuator.project.document import Document, demo, load, parse, template
 from actuator.project.locate import line_of, lines
 from actuator.project.paths import canonical, steps_of
-from actuator.project.schema import sheet
+from actuator.project.schema import SheetField, sheet
 from actuator.project.validate import validate
 from tests.project.samples import SAMPLE, SHORT, sample, short
 
@@ -147,6 +147,20 @@ def test_no_text_in_any_field_raises(edits: list[tuple[str, str]]) -> None:
     if isinstance(checked, tuple):
         assert checked
         assert all(problem.path and problem.allowed and str(problem) for problem in checked)
+
+
+NUMBERS = [row for group in sheet(1, 1) for row in group.fields if row.kind is not None]
+
+
+@settings(deadline=None, max_examples=300)
+@given(st.lists(st.tuples(st.sampled_from(NUMBERS), st.integers(-330, 330), st.sampled_from("19")), max_size=4))
+def test_no_size_of_a_number_raises(typed: list[tuple[SheetField, int, str]]) -> None:
+    edits = []
+    for row, power, digit in typed:
+        unit = re.sub(r"^[0-9. ]+", "", row.example)
+        edits.append((row.path, f"{digit}e{power} {unit}".strip()))
+    checked = validate(with_edits(short(), edits))
+    assert not isinstance(checked, tuple) or checked
 
 
 VALUES = st.recursive(
