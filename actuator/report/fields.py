@@ -9,7 +9,8 @@ from typing import Any
 from actuator.answer import Answer
 from actuator.kinds import FieldSpec, fields_of
 from actuator.parts import Project
-from actuator.project.schema import ALTERNATES, FAMILIES, default_text
+from actuator.project.fields import ALTERNATES, FAMILIES, assumption
+from actuator.project.schema import default_text
 from actuator.report.shown import Shown
 
 
@@ -82,7 +83,7 @@ def _origin(answer: Answer, spec: FieldSpec, path: str) -> str:
             other = f"{path.rpartition('_')[0]}_{way.suffix}"
             typed = answer.document.text(other)
             if typed:
-                return f"typed as {other.rpartition('.')[2]} = {typed}"
+                return f"typed as {other.rpartition('.')[2]} = {typed}. {assumption(way.suffix)}"
     return f"default: {default_text(spec)}".rstrip()
 
 

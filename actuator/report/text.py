@@ -120,7 +120,7 @@ def _actuator(at: At, shown: Shown) -> list[str]:
         lines += show(figures) if show is not None else table(title, figures, at, shown)
         if title == "Air of a cycle" and not isinstance(result.air, Refusal):
             lines += wrapped(result.air.difference)
-        if title == "Rod":
+        if title == "Rod" and result.rod.rule:
             lines += wrapped(f"Rule used: {result.rod.rule}.")
     remarks = list(result.remarks) + list(result.indicator.remarks)
     if not isinstance(result.stroke, Refusal):

@@ -160,3 +160,13 @@ def test_an_answer_with_problems_has_no_tables() -> None:
         as_text(broken)
     with pytest.raises(LookupError, match="the document has problems"):
         figure_list(broken)
+
+
+def test_a_rod_without_a_rule_does_not_name_one() -> None:
+    given = answer()
+    assert given.analysis is not None
+    machine = given.analysis.machines[0]
+    free = replace(machine.actuators[0], rod=replace(machine.actuators[0].rod, rule=""))
+    analysis = replace(given.analysis, machines=(replace(machine, actuators=(free,)),))
+    assert "Rule used" in as_text(given)
+    assert "Rule used" not in as_text(replace(given, analysis=analysis))

@@ -240,7 +240,9 @@ INDICATOR: tuple[Figure, ...] = (
         "Work per stroke",
         "W = p_s·ε·V_s + p_s·V₁·L·exprel((1−n)·L) − p_b·(1−κ)·V_s + W_recompression,  L = ln(V₂/V₁)\n"
         "V₁ = (c + ε)·V_s,  V₂ = (c + 1)·V_s,  V₃ = (c + κ)·V_s,  exprel(z) = (eᶻ − 1)/z",
-        note="Admission, polytropic expansion, release, exhaust and recompression; out and back.",
+        inputs=(*_DIAGRAM, "polytropic_index"),
+        note="Admission, polytropic expansion, release, exhaust and recompression; out and back. Here "
+        "n = 1.4 or the polytropic index given, p_b = p₀, κ = 0 as with an ordinary valve.",
     ),
     _indicator(
         "mean_effective_pressure",

@@ -60,7 +60,7 @@ _ROWS: tuple[tuple[str, Any, str, str, str], ...] = (
         "Force build-up time",
         "t_F = t(F_end ≥ force_at_end) − t(arrival)\n"
         "F_end = ±(p₁·A₁ − p₂·A₂ − p₀·(A₁ − A₂) − M·g·sin α + F_const) − F_c, + extending, − retracting",
-        "Needs require.force_at_end.",
+        "Against a force of 0 where require.force_at_end is not given, and always when retracting.",
     ),
     (
         "force_at_end",
