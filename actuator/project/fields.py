@@ -41,28 +41,28 @@ ALTERNATES = (
         suffix="cv",
         kind=kinds.kind_of(kinds.PositiveNumber),
         label="Cv",
-        help="US flow coefficient, in place of C.",
+        help="US flow coefficient, in place of C: equal air flow at small pressure drop; printed rules differ by 5 %.",
         example="0.5",
     ),
     Alternate(
         suffix="kv",
         kind=kinds.kind_of(kinds.PositiveNumber),
         label="Kv",
-        help="Metric flow coefficient in m3/h, in place of C.",
+        help="Flow coefficient in m3/h, in place of C: equal air flow at small pressure drop; rules differ by 5 %.",
         example="0.43",
     ),
     Alternate(
         suffix="qn",
         kind=replace(kinds.kind_of(kinds.FlowANR), at_least=None, above=0.0),
         label="nominal flow",
-        help="Flow from 6 to 5 bar gauge, in place of C.",
+        help="Flow from 6 to 5 bar gauge at 20 degC, in place of C: by ISO 6358 with m = 0.5.",
         example="500 L/min ANR",
     ),
     Alternate(
         suffix="s",
         kind=kinds.kind_of(kinds.Area),
         label="effective area",
-        help="Effective area S, in place of C.",
+        help="Effective area S, in place of C: throat of an ideal nozzle that chokes at the same flow, 20 degC.",
         example="10 mm2",
     ),
 )
@@ -70,6 +70,16 @@ PROCESS_FORCE = '[{ from = "380 mm", to = "400 mm", force = "300 N" }]'
 """How the list of process forces is typed."""
 FAMILIES = ("supply", "exhaust")
 """Paths of a valve that have alternates: ``supply_c``, ``supply_cv``, ..."""
+
+
+def assumption(suffix: str) -> str:
+    """What the conversion of an alternate (``"cv"``, ``"kv"``, ``"qn"``, ``"s"``) to C rests on, in words."""
+    from actuator.flow import conversion
+
+    if suffix in ("cv", "kv"):
+        return conversion.ASSUMPTION_KV
+    return conversion.ASSUMPTION_NOMINAL if suffix == "qn" else conversion.ASSUMPTION_AREA
+
 
 _FORMAT_SPEC = FieldSpec(
     name="format",

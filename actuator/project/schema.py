@@ -204,6 +204,3 @@ def _quantity(kind: Kind, example: str) -> dict[str, Any]:
         }
         made |= {key: value for key, value in limits.items() if value is not None}
     return {**made, "examples": [example or dimension.example]}
-
-
-__all__ = ["ALTERNATES", "FAMILIES", "SheetField", "SheetGroup", "default_text", "json_schema", "sheet"]

@@ -11,7 +11,6 @@ from actuator.project.document import Document
 from actuator.project.fields import FORMAT, fields
 from actuator.project.machines import machines
 from actuator.project.paths import Steps
-from actuator.project.schema import sheet
 from actuator.project.walk import Walk
 from actuator.units import Reading
 
@@ -149,28 +148,3 @@ def _plant(walk: Walk, here: Any) -> Plant | None:
         return None
     compressor = _compressor(walk, (*steps, 1), listed[0])
     return Plant(compressors=(compressor,)) if compressor is not None else None
-
-
-def provenance(document: Document) -> dict[str, str]:
-    """What was left out, and what holds in its place.
-
-    Parameters
-    ----------
-    document : Document
-
-    Returns
-    -------
-    dict of str to str
-        Rule and source of the default by numbered path.
-    """
-    tree = document.tree()
-    found: dict[str, str] = {}
-    listed = tree.get("machine")
-    for number, machine in enumerate(listed if isinstance(listed, list) else [], 1):
-        inside = machine.get("actuator") if isinstance(machine, dict) else None
-        for place, _ in enumerate(inside if isinstance(inside, list) else [], 1):
-            for group in sheet(number, place):
-                for row in group.fields:
-                    if row.default and not document.text(row.path):
-                        found[row.path] = row.default
-    return found

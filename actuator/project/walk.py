@@ -31,7 +31,9 @@ class Walk:
         self.reading = Reading()
 
     def problem(self, steps: Steps, given: Any, allowed: str) -> None:
-        """Keep a problem; what stands there is not used further."""
+        """Keep the first problem of a path; what stands there is not used further."""
+        if steps in self.bad:
+            return
         self.bad.add(steps)
         self.problems.append(
             Problem(
@@ -107,7 +109,7 @@ class Walk:
                 values[spec.name] = value
             else:
                 self.problem(steps, value, _choice(value, spec.choices))
-        elif isinstance(value, (bool,)) or not isinstance(value, (str, int, float)):
+        elif isinstance(value, bool) or not isinstance(value, (str, int, float)):
             self.problem(steps, value, f"must be a quantity: {_form(spec)}")
         else:
             assert spec.kind is not None

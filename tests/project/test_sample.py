@@ -19,7 +19,7 @@ from actuator.parts import (
     Valve,
 )
 from actuator.project.document import Document, demo, parse, template
-from actuator.project.validate import provenance, validate
+from actuator.project.validate import validate
 from tests.project.samples import sample, short
 
 
@@ -188,12 +188,3 @@ def test_the_demo_plant_checks_clean_and_says_that_it_is_invented() -> None:
         "Lift",
         "Clamp",
     ]
-
-
-def test_what_was_left_out_is_told_with_its_rule() -> None:
-    left_out = provenance(short())
-    assert left_out["machine.1.actuator.1.friction.breakaway"].startswith("8 % of (p_s - p0)*A_cap")
-    assert left_out["site.ambient_temperature"] == "20 degC"
-    assert left_out["machine.1.actuator.2.load.extend_force"] == "0 N"
-    assert "machine.1.actuator.2.retract_at" not in left_out
-    assert "machine.1.actuator.1.bore" not in left_out

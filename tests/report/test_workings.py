@@ -51,9 +51,11 @@ def test_origins_say_typed_default_or_computed() -> None:
     assert '"Press, left".Pusher.static.load_extend' in ratio
 
 
-def test_a_conductance_that_was_typed_otherwise_says_how() -> None:
+def test_a_conductance_that_was_typed_otherwise_says_how_and_on_what_assumption() -> None:
     found = inputs(working(answer(), 0, 0, "paths.cap_filling.conductance"))
-    assert found["machine.1.actuator.1.valve.supply_c"][1] == "typed as supply_cv = 0.5"
+    origin = found["machine.1.actuator.1.valve.supply_c"][1]
+    assert origin.startswith("typed as supply_cv = 0.5. ")
+    assert "measured with water" in origin
 
 
 def test_numbers_follow_the_reader_s_units() -> None:
