@@ -83,15 +83,15 @@ def test_a_dumb_terminal_gets_a_plain_message() -> None:
         [sys.executable, "-m", "actuator"],
         stdin=worker_end,
         stdout=worker_end,
-        stderr=subprocess.PIPE,
+        stderr=worker_end,
         env=environment(TERM="dumb"),
     )
+    assert process.wait(timeout=60) == 2
+    said = os.read(main_end, 10_000)
     os.close(worker_end)
-    _, err = process.communicate(timeout=60)
     os.close(main_end)
-    assert process.returncode == 2
-    assert b'TERM="dumb"' in err
-    assert b"\x1b" not in err
+    assert b'TERM="dumb"' in said
+    assert b"\x1b" not in said
 
 
 def test_a_closed_pipe_is_no_error(plant: Path) -> None:
