@@ -186,7 +186,7 @@ def render(found: Working, width: int = 100) -> str:
         name = min(max(len(item.name) for item in found.inputs), LONGEST_NAME)
         value = min(max(len(item.value) for item in found.inputs), LONGEST_VALUE)
         for item in found.inputs:
-            text = f"{item.name:<{name}}  {item.value:>{value}}  {item.origin}, {item.path}"
+            text = f"{item.name:<{name}}  {item.value:>{value}}  {item.origin.rstrip('.')}, {item.path}"
             lines += textwrap.wrap(text, width, initial_indent="  ", subsequent_indent=" " * (name + value + 6))
     lines += ["", "Sources", *_wrapped(found.sources, width)]
     if found.remarks:
