@@ -12,6 +12,7 @@ from tomlkit.items import AoT, InlineTable
 
 from actuator.project.fields import find
 from actuator.project.paths import Steps, steps_of
+from actuator.project.values import NumberText, value_of
 
 
 def rewritten(source: str, edits: Mapping[str, str], tree: Mapping[str, Any]) -> str:
@@ -55,8 +56,6 @@ def _filled(value: Any) -> Any:
 
 def _plain(value: Any) -> Any:
     """Tree that tomlkit can write: numbers as typed."""
-    from actuator.project.document import NumberText
-
     if isinstance(value, Mapping):
         return {key: _plain(item) for key, item in value.items()}
     if isinstance(value, list):
@@ -66,8 +65,6 @@ def _plain(value: Any) -> Any:
 
 def _set(here: Any, steps: Steps, text: str) -> None:
     """Set or leave out one key in tomlkit's document."""
-    from actuator.project.document import value_of
-
     for depth, step in enumerate(steps[:-1]):
         if isinstance(step, int):
             if step > len(here):

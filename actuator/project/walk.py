@@ -9,11 +9,12 @@ from typing import Any
 from actuator.errors import InputError, Problem
 from actuator.kinds import FieldSpec
 from actuator.project import paths
-from actuator.project.document import Document, told
+from actuator.project.document import Document
 from actuator.project.fields import fields
 from actuator.project.limits import beyond
 from actuator.project.locate import line_of
 from actuator.project.paths import Steps
+from actuator.project.values import told
 from actuator.unit_table import DIMENSIONS
 from actuator.units import Reading, UnitFault, read, show
 

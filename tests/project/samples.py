@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from actuator.project.document import Document, parse
+from actuator.project.schema import sheet
 
 SAMPLE = """\
 format = 1
@@ -105,6 +106,9 @@ mass = "30 kg"
 supply_c = "3 dm3/(s*bar)"
 """
 """Only what is needed, two actuators, one with dotted keys."""
+
+PATHS = [row.path for actuator in (1, 2) for group in sheet(1, actuator) for row in group.fields]
+"""Every field of the forms of two actuators."""
 
 
 def sample() -> Document:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import os
 import re
 import tomllib
 from contextlib import suppress
@@ -13,14 +12,13 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from actuator.errors import InputError
-from actuator.project.document import Document, demo, load, parse, template
-from actuator.project.locate import line_of, lines
-from actuator.project.paths import canonical, steps_of
+from actuator.project.document import Document, demo, parse, template
+from actuator.project.locate import lines
+from actuator.project.paths import steps_of
 from actuator.project.schema import SheetField, sheet
 from actuator.project.validate import validate
-from tests.project.samples import SAMPLE, SHORT, sample, short
+from tests.project.samples import PATHS, SAMPLE, SHORT, sample, short
 
-PATHS = [row.path for actuator in (1, 2) for group in sheet(1, actuator) for row in group.fields]
 TYPED = st.sampled_from(
     ["", "50 mm", "6 bar gauge", "0.30", "12", "-0", "1e3", "007", " 5 mm ", 'a "b" \\ c', "[1, 2]"]
 )
@@ -200,175 +198,3 @@ def test_a_broken_document_takes_no_edit_and_keeps_its_text(tmp_path: Path) -> N
     with pytest.raises(InputError, match=r"line 2: document: .* is not TOML"):
         document.edited("title", "x")
     assert document.saved(tmp_path / "a.toml").source == 'format = 1\nbore = "50\n'
-
-
-@pytest.mark.parametrize(
-    ("path", "message"),
-    [
-        ("machine.2.cycle_time", "there is only 1 of machine"),
-        ("machine.1.actuator.3.bore", "there are only 2 of machine.1.actuator"),
-        ("machine.1.actuator.bore", 'say which of machine.1.actuator by number or name: 1 "Pusher", 2 "Lift 1.5"'),
-        ("machine.1.actuator.Gripper.bore", "say which of machine.1.actuator by number or name"),
-        ("machine.0.name", "numbers count from 1"),
-        ("machine.1.name.x", "machine.1.name holds a value, not a table"),
-        ("machine..name", "is no path; write keys, numbers or quoted names with dots between"),
-        ("machine.", "is no path"),
-        ("", "is no path"),
-        ("a b", "is no path"),
-        ('machine."Packer', "is no path"),
-    ],
-)
-def test_a_path_that_leads_nowhere_is_refused(path: str, message: str) -> None:
-    with pytest.raises(InputError, match=re.escape(message)):
-        short().edited(path, "x")
-
-
-@pytest.mark.parametrize(
-    ("path", "numbered"),
-    [
-        ("machine.cycle_time", "machine.1.cycle_time"),
-        ("machine.Packer.cycle_time", "machine.1.cycle_time"),
-        ('machine."Packer".actuator.Pusher.bore', "machine.1.actuator.1.bore"),
-        ('machine.1.actuator."Lift 1.5".bore', "machine.1.actuator.2.bore"),
-        ("machine.actuator.'Lift 1.5'.load.mass", "machine.1.actuator.2.load.mass"),
-        (" machine . 1 . name", "machine.1.name"),
-        ("machine.actuator.2.load.process_force.force", "machine.1.actuator.2.load.process_force.1.force"),
-        ("plant.compressor.stages", "plant.compressor.1.stages"),
-        ("site.ambient_pressure", "site.ambient_pressure"),
-        ("machine", "machine"),
-        ('"two words".x', '"two words".x'),
-    ],
-)
-def test_names_and_left_out_numbers_become_numbers(path: str, numbered: str) -> None:
-    assert canonical(path, short().tree()) == numbered
-    assert canonical(numbered, short().tree()) == numbered
-
-
-def test_a_name_that_is_also_a_key_or_a_number_is_meant_in_quotes() -> None:
-    tree = {"machine": [{"name": "hours"}, {"name": "1"}]}
-    assert canonical('machine."1".hours', tree) == "machine.2.hours"
-    assert canonical("machine.1.hours", tree) == "machine.1.hours"
-    assert canonical("machine.hours.hours", tree) == "machine.1.hours"
-    assert canonical("machine.hours", {"machine": [{"name": "hours"}]}) == "machine.1.hours"
-    assert canonical('machine."hours".hours', {"machine": [{"name": "hours"}]}) == "machine.1.hours"
-
-
-def test_a_name_that_two_have_is_refused() -> None:
-    tree = {"machine": [{"name": "A"}, {"name": "A"}]}
-    with pytest.raises(InputError, match='more than one of machine has the name "A"; write a number'):
-        canonical("machine.A.hours", tree)
-
-
-def test_saving_is_whole_keeps_the_mode_and_leaves_nothing_else(tmp_path: Path) -> None:
-    path = tmp_path / "line.toml"
-    path.write_text(SAMPLE, encoding="utf-8")
-    path.chmod(0o640)
-    saved = load(path).edited("title", "Größe ✓").saved(path)
-    assert path.read_text(encoding="utf-8") == saved.source
-    assert saved.edits == {}
-    assert saved.path == path
-    assert load(path).text("title") == "Größe ✓"
-    assert path.stat().st_mode & 0o777 == 0o640
-    assert [each.name for each in tmp_path.iterdir()] == ["line.toml"]
-
-
-def test_saving_through_a_link_writes_what_it_points_to(tmp_path: Path) -> None:
-    path, link = tmp_path / "line.toml", tmp_path / "link.toml"
-    path.write_text(SAMPLE, encoding="utf-8")
-    link.symlink_to(path)
-    load(link).edited("title", "Other").saved(link)
-    assert link.is_symlink()
-    assert load(path).text("title") == "Other"
-
-
-def test_a_save_that_fails_leaves_the_old_file(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
-    path = tmp_path / "line.toml"
-    path.write_text(SAMPLE, encoding="utf-8")
-
-    def full(descriptor: int) -> None:
-        raise OSError(28, "No space left on device")
-
-    monkeypatch.setattr(os, "fsync", full)
-    with pytest.raises(OSError, match="No space left"):
-        load(path).edited("title", "Other").saved(path)
-    assert path.read_text(encoding="utf-8") == SAMPLE
-    assert [each.name for each in tmp_path.iterdir()] == ["line.toml"]
-
-
-def test_line_ends_and_bytes_that_are_no_text_go_back_as_they_were(tmp_path: Path) -> None:
-    path = tmp_path / "line.toml"
-    windows = SHORT.replace("\n", "\r\n").encode()
-    path.write_bytes(windows)
-    load(path).edited("machine.actuator.1.bore", "63 mm").saved(path)
-    assert path.read_bytes() == windows.replace(b"50 mm", b"63 mm")
-    broken = b'format = 1\ntitle = "\xff"\n'
-    path.write_bytes(broken)
-    document = load(path)
-    assert document.broken is not None
-    assert (document.broken.line, document.broken.allowed) == (2, "must be UTF-8 text")
-    document.saved(path)
-    assert path.read_bytes() == broken
-
-
-def test_a_mark_of_byte_order_is_read_over(tmp_path: Path) -> None:
-    path = tmp_path / "line.toml"
-    path.write_bytes(b"\xef\xbb\xbf" + SHORT.encode())
-    assert load(path).tree() == short().tree()
-
-
-def test_every_key_of_a_document_has_its_line() -> None:
-    for document in (sample(), short(), demo(), parse(template("si"))):
-        rows = document.source.splitlines()
-        found = lines(document.source)
-        keys = [steps for steps in found if steps and isinstance(steps[-1], str)]
-        assert len(keys) > 15
-        for steps in keys:
-            assert str(steps[-1]) in rows[found[steps] - 1]
-        for path in (path for path in PATHS if document.text(path)):
-            assert path.rpartition(".")[2] in rows[line_of(document.source, steps_of(path)) - 1]
-
-
-def test_lines_are_found_among_all_that_toml_allows() -> None:
-    source = '''\
-# comment with [brackets] and "quotes"
-a = """one
-two # no comment
-"""   # comment
-"b c".'d' = [ # list
-  1, # one
-  { e = "}", f = [2, 3] },
-]
-[t."u v"] # table
-g = \'\'\'x'y''z\'\'\'
-[[l]]
-h = 1979-05-27 07:32:00
-[[l]]
-h = -inf
-i = "\\"#"
-j = []
-[l.m]
-k = { }
-'''
-    tomllib.loads(source)
-    assert lines(source) == {
-        ("a",): 2,
-        ("b c",): 5,
-        ("b c", "d"): 5,
-        ("b c", "d", 1): 6,
-        ("b c", "d", 2): 7,
-        ("b c", "d", 2, "e"): 7,
-        ("b c", "d", 2, "f"): 7,
-        ("b c", "d", 2, "f", 1): 7,
-        ("b c", "d", 2, "f", 2): 7,
-        ("t", "u v"): 9,
-        ("t", "u v", "g"): 10,
-        ("l",): 11,
-        ("l", 1): 11,
-        ("l", 1, "h"): 12,
-        ("l", 2): 13,
-        ("l", 2, "h"): 14,
-        ("l", 2, "i"): 15,
-        ("l", 2, "j"): 16,
-        ("l", 2, "m"): 17,
-        ("l", 2, "m", "k"): 18,
-    }
