@@ -29,6 +29,8 @@ from actuator.stroke import cycle, equations, events, layout, steppers
 Engine = Literal["auto", "compiled", "interpreted"]
 
 _MODULES = (scalar, friction, layout, equations, events, steppers, cycle)
+PATIENCE = 6
+"""Strokes that a process computes interpreted before it begins to load the compiled kernel: loading costs more. [1]"""
 _OFF = "ACTUATOR_INTERPRETED"
 """Environment variable: set to anything, the kernel is never compiled."""
 
@@ -43,6 +45,7 @@ class _State:
     child: subprocess.Popen[bytes] | None = None
     loader: threading.Thread | None = None
     remark: str = ""
+    asked: int = 0
 
 
 _state = _State()
@@ -199,7 +202,8 @@ def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
     Parameters
     ----------
     wanted : {"auto", "compiled", "interpreted"}
-        ``"auto"`` takes the compiled kernel once it is there and never waits for it; ``"compiled"`` waits.
+        ``"auto"`` takes the compiled kernel once it is there, begins to load it after ``PATIENCE`` strokes and
+        never waits for it; ``"compiled"`` waits.
 
     Returns
     -------
@@ -213,7 +217,11 @@ def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
     """
     if wanted == "interpreted":
         return cycle.settle, False
-    prepare(wait=wanted == "compiled")
+    with _lock:
+        _state.asked += 1
+        patient = _state.asked <= PATIENCE
+    if wanted == "compiled" or not patient:
+        prepare(wait=wanted == "compiled")
     with _lock:
         if _state.settle is not None:
             return _state.settle, True

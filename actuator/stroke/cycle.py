@@ -27,7 +27,10 @@ from actuator.stroke.events import (
 )
 from actuator.stroke.steppers import error_norm, explicit_step, implicit_step, jacobian
 
-_STEP_LIMIT = 60000.0
+_STEP_LIMIT = 20000.0
+"""Steps of one cycle after which it is given up. [1]"""
+_SETTLE_STEPS = 30000.0
+"""Steps after which no further cycle is begun, whether the state repeats or not. [1]"""
 
 
 def step(
@@ -116,6 +119,7 @@ def cycle(
     fresh = True
     stale = True
     limp = 0
+    step_limit = info[at.I_STEPS] + _STEP_LIMIT
     info[at.I_EVENTS] = 0.0
     info[at.I_ROWS] = 0.0
     while True:
@@ -170,7 +174,7 @@ def cycle(
             if stop[0] != 0:
                 return at.STOPPED
             info[at.I_STEPS] += 1.0
-            if info[at.I_STEPS] > _STEP_LIMIT:
+            if info[at.I_STEPS] > step_limit:
                 return at.TOO_MANY_STEPS
             taken = h
             if time + 1.001 * h >= limit:
@@ -179,7 +183,7 @@ def cycle(
                 taken = 0.5 * (limit - time)
             eigen = step(implicit, time, taken, y, mode, par, n, k, stage, new, error, jac, lu, pivot, u, ledger)
             info[at.I_RATES] += 6.0
-            norm = error_norm(y, new, error, par, rtol, moving)
+            norm = error_norm(y, new, error, par, rtol, moving, ledger)
             power = 0.25 if implicit else 0.2
             if norm <= 1.0:
                 grow = 5.0 if norm < 1e-4 else min(5.0, 0.9 * norm ** (-power))
@@ -370,6 +374,6 @@ def settle(
             worst = max(worst, abs(y[i] - before[i]) / y[i])
         info[at.I_CYCLES] = done
         info[at.I_MISMATCH] = worst
-        if worst <= tolerance:
+        if worst <= tolerance or info[at.I_STEPS] > _SETTLE_STEPS:
             break
     return at.DONE

@@ -38,6 +38,8 @@ N_STATE = 6
     Q_WALL_ROD,
 ) = range(N_STATE, N_STATE + 29)
 N_LEDGER = N_STATE + 29
+N_WATCHED = Q_X_SIDE + 1
+"""With the ledger, the step error of the integrals up to here counts as well. [1]"""
 
 # Parameters: SI, absolute pressures.
 (
@@ -68,9 +70,11 @@ N_LEDGER = N_STATE + 29
     OPENING,
     CUT_EXTEND,
     CUT_RETRACT,
+    LEDGER_SCALE,
     CAP_FILL,
-) = range(28)
-"""WEIGHT = M·g·sin α, GUIDE = μ·M·g·cos α; INDEX 0 = use HEAT; CUT_* positions [m], beyond the end = none."""
+) = range(29)
+"""WEIGHT = M·g·sin α, GUIDE = μ·M·g·cos α; INDEX 0 = use HEAT; CUT_* positions [m], beyond the end = none;
+LEDGER_SCALE = exergy of the air of a cycle, against which the step error of the ledger counts [J]."""
 PATHS = ("cap fill", "cap back", "cap exhaust", "cap suck", "rod fill", "rod back", "rod exhaust", "rod suck")
 """From CAP_FILL on, three numbers (C, b, m) for each of these paths."""
 FILL, BACK, VENT, SUCK = 0, 3, 6, 9

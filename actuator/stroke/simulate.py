@@ -15,6 +15,7 @@ from actuator.stroke import layout as at
 from actuator.stroke.assemble import assemble, stored
 from actuator.stroke.compiled import Engine
 from actuator.stroke.compiled import engine as pick_engine
+from actuator.stroke.equations import psi
 from actuator.stroke.events import process_at
 from actuator.stroke.result import Path, StrokeResult
 
@@ -164,7 +165,17 @@ def _workspace(compiled: bool) -> tuple[Any, ...]:
 def _closes(start: Any, end: Any, par: list[float]) -> bool:
     """Whether what the cycle leaves stored is small against what it was supplied with."""
     row = np.array(par)
-    return abs(stored(end, row) - stored(start, row)) <= 3e-7 * abs(end[at.Q_SUPPLIED])
+    return bool(abs(stored(end, row) - stored(start, row)) <= 3e-7 * abs(end[at.Q_SUPPLIED]))
+
+
+def _exergy_scale(events: Any, par: list[float]) -> float:
+    """Exergy of the air drawn in the cycle whose events these are, at least 1e-4 of a swept volume's. [J]"""
+    size = at.EVENT_WIDTH
+    switched = [row for row in range(0, size * at.MAX_EVENTS, size) if events[row + at.E_CODE] == at.SWITCH][:2]
+    change = sum(abs(events[switched[0] + place] - events[switched[1] + place]) for place in (at.E_M_CAP, at.E_M_ROD))
+    full = par[at.P_LINE] * (par[at.AREA_CAP] * par[at.STROKE] + par[at.DEAD_CAP]) / (R_AIR * par[at.T_AMB])
+    per_mass = psi(par[at.P_LINE], par[at.T_SUPPLY], par[at.P_AMB], par[at.T_AMB])
+    return float(max(change, 1e-4 * full) * per_mass)
 
 
 def simulate(
@@ -238,21 +249,26 @@ def simulate(
 
     status = run(MOST_CYCLES, 30.0 * ROUGH, ROUGH, False, False)
     cycles = info[at.I_CYCLES]
-    close, quiet, reported = 3.0 * fine, 1.0, False
-    while status == at.DONE and not (reported and cycles >= 2.0 * MOST_CYCLES):
+    last = info[at.I_MISMATCH] > 30.0 * ROUGH
+    close, quiet = 3.0 * fine, 1.0
+    while status == at.DONE:
         # quiet cycles at the fine tolerance, then one that is reported, until that one repeats
         status = run(quiet, close, fine, False, False)
         cycles += info[at.I_CYCLES]
+        rows[1][at.LEDGER_SCALE] = _exergy_scale(events, par)
         if status == at.DONE:
             status = run(1.0, close, fine, ledger, True)
             cycles += 1.0
-            reported = True
-            if info[at.I_MISMATCH] <= close and (not ledger or _closes(np.array(work[7]), np.array(state), par)):
+            repeats = info[at.I_MISMATCH] <= close
+            if last or (repeats and (not ledger or _closes(np.array(work[7]), np.array(state), par))):
                 break
-        quiet = min(2.0 * quiet, 16.0)
-        close *= 0.3 if info[at.I_MISMATCH] <= close else 1.0
+            close *= 0.3 if repeats else 1.0
+        quiet *= 2.0
+        last = quiet >= 64.0
     if status != at.DONE:
-        return Refusal("the motion changes too often to be followed: check mass, friction and conductances")
+        return Refusal(
+            "the motion changes too fast to be followed: look for a dead volume, mass or conductance out of proportion"
+        )
     return assemble(
         actuator, machine, site,
         par=np.array(par), rows=np.array(history), log=np.array(events), info=np.array(info),
