@@ -77,6 +77,13 @@ class Indicator:
     remarks: tuple[str, ...]
 
 
+def _between(start: float, end: float) -> Array:
+    """Volumes evenly in ln V, so that a curve is as smooth where it is steep; plain where it has no length. [m³]"""
+    if start == end or min(start, end) <= 0.0:
+        return np.linspace(start, end, CURVE_POINTS)
+    return np.geomspace(start, end, CURVE_POINTS)
+
+
 def diagram(
     *,
     p_supply: float,
@@ -161,7 +168,7 @@ def diagram(
             f"Expansion ends at {p_release / 1e5:.3g} bar absolute, below the back pressure: "
             "the end of the stroke brakes; a later cut-off would not."
         )
-    fall, rise = np.linspace(v1, v2, CURVE_POINTS), np.linspace(v3, least, CURVE_POINTS)
+    fall, rise = _between(v1, v2), _between(v3, least)
     back = end_pressure(p_back, v3, rise, index_compression) if squeezed else np.full(CURVE_POINTS, p_back)
     volume = np.concatenate(([least, v1], fall, [v2], rise, [least]))
     pressure = np.concatenate(

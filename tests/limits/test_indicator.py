@@ -46,8 +46,9 @@ def test_work_is_the_area_that_is_drawn(clearance: float, cut_off: float, closur
         index_compression=index,
     )
     assert len(ideal.volume) == len(ideal.pressure)
-    assert (ideal.volume[0], ideal.pressure[0]) == pytest.approx((ideal.volume[-1], ideal.pressure[-1]))
-    assert _area(ideal.volume, ideal.pressure) == pytest.approx(ideal.work, rel=0.02)
+    assert (ideal.volume[0], ideal.pressure[0]) == (ideal.volume[-1], ideal.pressure[-1])
+    gross = abs(ideal.work_out) + abs(ideal.work_back)  # straight pieces between points evenly in ln V
+    assert _area(ideal.volume, ideal.pressure) == pytest.approx(ideal.work, abs=0.005 * gross)
 
 
 def test_complete_isothermal_expansion_uses_all_exergy() -> None:
