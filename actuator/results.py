@@ -129,7 +129,8 @@ class Supply:
     """From the meter to a kilogram of compressed air."""
 
     specific_work: float
-    """Work on the air by the model of the compressor, before drive and motor. [J/kg dry air]"""
+    """Work on the air by the model of the compressor, before drive and motor; ideal isentropic where the package
+    power is given. [J/kg dry air]"""
     specific_energy: float
     """Electricity per mass of dry air. [J/kg]"""
     energy_per_anr: float

@@ -226,11 +226,13 @@ def supply_work(compressor: Compressor, site: Site) -> SupplyWork | Refusal:
     Returns
     -------
     SupplyWork or Refusal
-        Refused where the rated pressure is not above ambient.
+        Refused where the rated pressure is not above ambient, and where the measured pair would be better than
+        ideal isothermal compression.
 
     Notes
     -----
-    Measured: package power over (free air delivered · dry air density of the intake). Otherwise, N stages of
+    Measured: package power over (free air delivered · dry air density of the intake); the work beside it is then
+    that of ideal isentropic compression in one stage, for comparison. Otherwise, N stages of
     equal ratio, each with c_p·T₁·(r^k − 1)/η_s, or c_p·T₁·(r^(k/η_p) − 1), k = (γ − 1)/γ, intercooled to the
     approach, over drive and motor efficiency. Moisture is neglected in the work.
 
@@ -242,12 +244,20 @@ def supply_work(compressor: Compressor, site: Site) -> SupplyWork | Refusal:
     ratio = compressor.rated_pressure / site.ambient_pressure
     if ratio <= 1.0:
         return Refusal("the compressor's rated pressure is not above ambient", "rated_pressure")
-    work = _stage_work(compressor, site.ambient_temperature, ratio)
     if compressor.free_air is not None and compressor.package_power is not None:
+        work = float(steady_flow_work(site.ambient_temperature, ratio, GAMMA))
         density = dry_density_at(site.ambient_pressure, site.ambient_temperature, site.relative_humidity)
         energy = compressor.package_power / (compressor.free_air * density)
+        least = float(steady_flow_work(site.ambient_temperature, ratio, 1.0))
+        if energy < least:
+            return Refusal(
+                f"package_power and free_air together make {energy / 1e3:.3g} kJ/kg, less than the "
+                f"{least / 1e3:.3g} kJ/kg of ideal isothermal compression: one of them is wrong",
+                "package_power",
+            )
         how = "package power"
     else:
+        work = _stage_work(compressor, site.ambient_temperature, ratio)
         energy = work / (compressor.drive_efficiency * compressor.motor_efficiency)
         how = "stages and efficiencies"
     return SupplyWork(specific_work=work, specific_energy=energy, how=how, note=MOISTURE_NOTE)

@@ -85,6 +85,14 @@ def make_balances(start: Array, end: Array, par: Array) -> Balances:
     )
 
 
+def _pauses(events: Array, sign: float, stroke: float) -> str:
+    """Positions between the ends where motion in a direction stopped, in millimetres, at most three."""
+    inside = (events[:, at.E_X] > 1e-3 * stroke) & (events[:, at.E_X] < (1.0 - 1e-3) * stroke)
+    held = inside & (events[:, at.E_CODE] == at.STICK) & (events[:, at.E_SIGN] == sign)
+    places = [f"{1e3 * x:.4g}" for x in events[held, at.E_X]]
+    return ", ".join(places[:3]) + (" ..." if len(places) > 3 else "")
+
+
 def assemble(
     actuator: Actuator,
     machine: Machine,
@@ -118,6 +126,11 @@ def assemble(
     if int(info[at.I_EVENTS]) > at.MAX_EVENTS:
         remarks.append("the piston sticks and slips too often: only the first events of the cycle are counted")
     remarks += [f"{half.direction}: {half.stroke_time}" for half in halves if isinstance(half.stroke_time, Refusal)]
+    remarks += [
+        f"{half.direction}: the piston pauses at {places} mm before it goes on to the end"
+        for half, sign in zip(halves, (1.0, -1.0), strict=True)
+        if half.completed and (places := _pauses(events, sign, actuator.stroke))
+    ]
     none = Refusal("not asked for")
     return StrokeResult(
         **{name: getattr(past, name) for name in Histories.__dataclass_fields__},

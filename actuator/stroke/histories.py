@@ -104,16 +104,16 @@ def _arrival(log: Array, sign: float) -> int | None:
     return int(hits[0]) if len(hits) else None
 
 
-def _start_of(log: Array, arrival: int, sign: float, since: float) -> float:
-    """Time of the start of the motion that ends at ``arrival``; a stick within 1 ms of its restart is no end."""
-    start = since
+def _start_of(log: Array, arrival: int, sign: float, since: float) -> tuple[float, float]:
+    """Time and place of the start of the motion that ends at ``arrival``; a stick within 1 ms is no end of it."""
+    start, place = since, float(log[0, at.E_X])
     for i in range(arrival - 1, -1, -1):
         code = log[i, at.E_CODE]
         if code == at.START and log[i, at.E_SIGN] == sign:
-            start = log[i, at.E_TIME]
+            start, place = log[i, at.E_TIME], log[i, at.E_X]
         elif (code == at.STICK and start - log[i, at.E_TIME] > 1e-3) or code in (at.START, at.ARRIVE):
             break
-    return float(start)
+    return float(start), float(place)
 
 
 def half_stroke(
@@ -186,7 +186,8 @@ def half_stroke(
             air_drawn=air_drawn,
         )
     arrived = float(log[arrival, at.E_TIME])
-    started = _start_of(log, arrival, sign, delay)
+    started, place = _start_of(log, arrival, sign, delay)
+    end = actuator.stroke if sign > 0.0 else 0.0
     later = (log[:, at.E_CODE] == at.ARRIVE) & (log[:, at.E_SIGN] == sign) & (log[:, at.E_TIME] <= lasts + delay)
     settled = float(log[later, at.E_TIME].max(initial=arrived))
     end_speed = abs(float(log[arrival, at.E_V]))
@@ -200,7 +201,7 @@ def half_stroke(
         settled_time=settled,
         force_time=force_time,
         force_at_end=force,
-        mean_speed=actuator.stroke / (arrived - started),
+        mean_speed=abs(end - place) / (arrived - started),
         peak_speed=max(float(speeds.max(initial=0.0)), end_speed),
         end_speed=end_speed,
         end_energy=0.5 * actuator.load.mass * end_speed**2,

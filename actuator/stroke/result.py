@@ -36,7 +36,7 @@ class HalfStroke:
     force_at_end: float | Refusal
     """That same force at the next command, in this direction. [N]"""
     mean_speed: float | Refusal
-    """Stroke over (stroke time - reaction time). [m/s]"""
+    """Way of the motion that reaches the end, over (stroke time - reaction time). [m/s]"""
     peak_speed: float
     """Highest speed in this direction. [m/s]"""
     end_speed: float | Refusal

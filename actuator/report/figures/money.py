@@ -222,7 +222,8 @@ PROJECT: tuple[Figure, ...] = (
         "w = Σ over N stages of c_p·T·(r^k − 1)/η_s, or c_p·T·(r^(k/η_p) − 1);  r = (p₂/p₁)^(1/N), "
         "k = (γ − 1)/γ\nT = intake temperature, after an intercooler no more than the approach above it",
         inputs=_COMPRESSOR,
-        note="Per mass of dry air, before drive and motor.",
+        note="Per mass of dry air, before drive and motor. Where package power is given: ideal isentropic "
+        "compression in one stage (η_s = 1, N = 1), for comparison.",
     ),
     _supply(
         _specific_energy,
