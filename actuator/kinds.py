@@ -120,6 +120,8 @@ AirMass = Annotated[float, Kind(dimension="air_mass", unit="kg", suffix="_kg")]
 Energy = Annotated[float, Kind(dimension="energy", unit="J", suffix="_J")]
 YearlyEnergy = Annotated[float, Kind(dimension="yearly_energy", unit="J", suffix="_J")]
 SpecificEnergy = Annotated[float, Kind(dimension="specific_energy", unit="J/kg", suffix="_J_kg")]
+EnergyPerANR = Annotated[float, Kind(dimension="energy_per_volume", unit="J/m**3", suffix="_J_m3")]
+"""Electricity per volume of free air, ANR. [J/m³]"""
 Power = Annotated[float, Kind(dimension="power", unit="W", suffix="_W", above=0.0)]
 EnergyPrice = Annotated[float, Kind(dimension="energy_price", unit="1/J", at_least=0.0)]
 """Money per joule of electricity, in the document's currency. [1/J]"""

@@ -323,6 +323,18 @@ DIMENSIONS: dict[str, Dimension] = {
         example="1 234 EUR/year",
         money=True,
     ),
+    "energy_per_volume": Dimension(
+        name="an energy per volume of free air",
+        forms={
+            f"{energy}/{unit}": f"{ENERGY[energy]}/({VOLUME[unit]})"
+            for energy in ("J", "kJ", "kWh")
+            for unit in ("m3", "ft3")
+        },
+        si=("kWh/m3 ANR",),
+        us=("kWh/ft3 ANR", "kWh/m3 ANR"),
+        example="0.1 kWh/m3 ANR",
+        reference="free",
+    ),
     "price_air": Dimension(
         name="a price of free air",
         forms={f"/{unit}": f"1/({VOLUME[unit]})" for unit in ("m3", "L", "ft3")},

@@ -245,7 +245,9 @@ class Money:
 class Project:
     """Everything that one document describes."""
 
-    title: Annotated[str, Entry("Title", "What the document is about.", default="empty", example='"Carton line, hall B"')] = ""
+    title: Annotated[
+        str, Entry("Title", "What the document is about.", default="empty", example='"Carton line, hall B"')
+    ] = ""
     site: Annotated[Site, Entry("Site", "Where the machines stand.")] = field(default_factory=Site)
     machines: Annotated[tuple[Machine, ...], Entry("Machines", "The machines.", key="machine")] = ()
     plant: Annotated[Plant, Entry("Plant", "What feeds the machines.")] = field(default_factory=Plant)

@@ -9,6 +9,7 @@ from actuator.errors import Refusal
 from actuator.kinds import (
     CarbonYear,
     Energy,
+    EnergyPerANR,
     FlowANR,
     Kind,
     MoneyYear,
@@ -20,9 +21,6 @@ from actuator.kinds import (
 from actuator.report.figures.cycle import RATIO, ledger_item, share_of
 from actuator.report.figures.registry import At, Figure, Level, kind
 from actuator.results import Supply
-
-ENERGY_PER_ANR = Kind(dimension="energy_per_volume", unit="J/m**3", suffix="_J_m3")
-"""Electricity per volume of air, ANR. [J/m³]"""
 
 _COMPRESSOR = ("plant.compressor.1", "site")
 _COSTS: tuple[tuple[str, Any, str], ...] = (
@@ -237,7 +235,7 @@ PROJECT: tuple[Figure, ...] = (
     _supply(
         lambda supply: supply.energy_per_anr,
         "supply.energy_per_anr",
-        ENERGY_PER_ANR,
+        EnergyPerANR,
         "Electricity per volume",
         "e·ρ_dry(ANR),  ρ_dry(ANR) = 1.1703 kg/m³",
         uses=("supply.specific_energy",),
