@@ -87,6 +87,19 @@ def test_electricity_from_stages_is_work_over_efficiencies() -> None:
     assert supply.how == "stages and efficiencies"
 
 
+def test_intercoolers_of_a_machine_leave_air_warmer_than_the_intake() -> None:
+    def work(approach: float) -> float:
+        supply = supply_work(Compressor(isentropic_efficiency=0.75, stages=2, approach=approach), Site())
+        assert not isinstance(supply, Refusal)
+        return supply.specific_work
+
+    assert work(20.0) / work(0.0) == pytest.approx(1.0 + 0.5 * 20.0 / 293.15, rel=1e-12)
+    # without cooling the second stage takes in what the first gives
+    ratio = Compressor().rated_pressure / Site().ambient_pressure
+    rise = (math.sqrt(ratio) ** (0.4 / 1.4) - 1.0) / 0.75
+    assert work(500.0) / work(0.0) == pytest.approx(1.0 + 0.5 * rise, rel=1e-12)
+
+
 def test_polytropic_efficiency_is_above_the_isentropic_one_of_the_same_machine() -> None:
     def work(machine: Compressor) -> float:
         supply = supply_work(machine, Site())

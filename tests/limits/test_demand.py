@@ -55,6 +55,9 @@ def test_the_top_of_a_triangle_lies_between_its_points() -> None:
     triangle = (np.array([0.0, 1.0, 2.0, 4.0]), np.array([0.0, 1.0, 0.0, 0.0]))
     # a window of 0.5 s centred on the top: 1 − 0.25/2
     assert demand([triangle], 4.0, 0.5).peak == pytest.approx(0.875, rel=1e-12)
+    # falling half as fast, the best window begins 1/6 s before the top, where both its ends are equal: 1 − 1/12
+    skew = (np.array([0.0, 1.0, 3.0, 4.0]), np.array([0.0, 1.0, 0.0, 0.0]))
+    assert demand([skew], 4.0, 0.5).peak == pytest.approx(11.0 / 12.0, rel=1e-12)
 
 
 @quick
