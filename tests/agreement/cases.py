@@ -109,7 +109,7 @@ def case(
     return Case(name, part, machine, Site(ambient_pressure=ambient * 1e5, ambient_temperature=temp_ambient))
 
 
-def _like_base(name: str, **changed: Any) -> Case:
+def base_case(name: str, **changed: Any) -> Case:
     """The base case of the ledger's reference rows, with changes."""
     given: dict[str, Any] = {
         "c": 2.0, "dead": 20.0, "friction": (90.0, 60.0, 30.0), "delay": 0.0, "opening": 0.0
@@ -118,11 +118,11 @@ def _like_base(name: str, **changed: Any) -> Case:
 
 
 REFERENCE_CASES = (
-    _like_base("base"),
-    _like_base("short 1.2 s", period=1.2),
-    _like_base("loaded", load={"extend_force": 400.0, "retract_force": 100.0, "guide_friction": 0.1}),
-    _like_base("big dead vol.", dead=200.0),
-    _like_base("exhaust C x20", exhaust_c=40.0),
+    base_case("base"),
+    base_case("short 1.2 s", period=1.2),
+    base_case("loaded", load={"extend_force": 400.0, "retract_force": 100.0, "guide_friction": 0.1}),
+    base_case("big dead vol.", dead=200.0),
+    base_case("exhaust C x20", exhaust_c=40.0),
 )
 """The five rows of the ledger."""
 

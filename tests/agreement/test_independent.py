@@ -66,3 +66,21 @@ def test_ledger_agrees_item_by_item(case: Case) -> None:
         # repeats only to within ``mismatch`` cannot be known better than that.
         share = 1e-3 if item == "filling" else 1e-5 + 3.0 * result.mismatch
         assert getattr(got, item) == pytest.approx(wanted, abs=share * got.supplied), item
+
+
+@pytest.mark.parametrize("case", CASES, ids=lambda case: case.name)
+def test_entropy_heat_and_masses_agree(case: Case) -> None:
+    sums = reference_of(case.name).tally.sums
+    result = project_result(case)
+    got = result.balances
+    assert not isinstance(got, Refusal)
+    share = 1e-5 + 3.0 * result.mismatch
+    temp0, energy, mass = case.site.ambient_temperature, sums["supplied"], sums["drawn"]
+    produced = sums["entropy_exhaust"] - sums["entropy_supply"] - sums["wall_to_air"] / temp0
+    assert got.entropy_produced == pytest.approx(produced, abs=share * energy / temp0)
+    enthalpy = sums["enthalpy_supply"]
+    assert sum(got.heat) == pytest.approx(sums["wall_to_air"], abs=share * enthalpy)
+    assert sum(got.work) == pytest.approx(sums["boundary_work"], abs=share * energy)
+    assert got.drawn == pytest.approx(sums["drawn"], abs=share * mass)
+    assert got.given_back == pytest.approx(sums["given_back"], abs=share * mass)
+    assert got.vented == pytest.approx(sums["vented"] - sums["sucked_in"], abs=share * mass)
