@@ -114,7 +114,7 @@ def base_case(name: str, **changed: Any) -> Case:
     given: dict[str, Any] = {
         "c": 2.0, "dead": 20.0, "friction": (90.0, 60.0, 30.0), "delay": 0.0, "opening": 0.0
     }  # fmt: skip
-    return case(name, 50, 20, 400, 20, **(given | changed))
+    return case(name, 50, 20, 400, changed.pop("mass", 20.0), **(given | changed))
 
 
 REFERENCE_CASES = (
