@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import asyncio
 import contextlib
+import gc
 import signal
 import threading
 from collections.abc import Iterable
@@ -17,12 +18,12 @@ from textual.binding import BindingType
 from textual.message import Message
 from textual.reactive import reactive
 from textual.screen import Screen
-from textual.widgets import Input, OptionList
+from textual.widgets import Input
 from textual.worker import get_current_worker
 
-from actuator.errors import Cancelled, Problem
+from actuator.errors import Cancelled, InputError, Problem
 from actuator.settings import Settings, load_settings
-from tui import actions
+from tui import actions, files
 from tui.drafts import Drafts
 from tui.screens.desk import Desk
 from tui.session import Place, Session, places
@@ -31,6 +32,7 @@ from tui.widgets.field import Field
 from tui.widgets.figures import Figures
 from tui.widgets.head import Chooser, Head
 from tui.widgets.keys import Keys
+from tui.widgets.problems import Problems
 
 if TYPE_CHECKING:
     from actuator.answer import Answer
@@ -86,6 +88,7 @@ class Design(App[int], inherit_bindings=False):
         self.set_keymap(dict(self.settings.keys))
         await self.push_screen(self.desk)
         self.show_place()
+        self.desk.show_waiting(files.FIRST)
         self.desk.call_after_refresh(self._begin)
 
     def _begin(self) -> None:
@@ -102,8 +105,13 @@ class Design(App[int], inherit_bindings=False):
     @on(Input.Changed)
     def take_edit(self, event: Input.Changed) -> None:
         """Put what was typed into the document."""
-        if isinstance(event.input, Field):
-            self.session = self.session.edited(event.input.spec.path, event.input.value)
+        field = event.input
+        if isinstance(field, Field):
+            try:
+                self.session = self.session.edited(field.spec.path, field.value)
+            except InputError as fault:  # the file has no such table, or is no TOML
+                field.put(self.session.text(field.spec.path))
+                self.notify(f"{fault}", title="Not possible here", severity="warning", timeout=8)
 
     @on(Input.Blurred)
     def take_leave(self) -> None:
@@ -113,7 +121,7 @@ class Design(App[int], inherit_bindings=False):
     def watch_session(self, session: Session) -> None:
         """Show it, and have it worked out."""
         self.show_place()
-        self.desk.show_state("working …" if self.answer else "", sound=True)
+        self.desk.show_working()
         self._keep_later(session)
         self.solve(session, self.answer)
 
@@ -142,6 +150,8 @@ class Design(App[int], inherit_bindings=False):
         self.answered = event.revision
         problems: tuple[Problem, ...] = event.answer.problems if event.answer else ()
         if event.answer is not None and event.answer.analysis is not None:
+            if self.answer is None:
+                gc.freeze()  # what the first answer has loaded stays: later collections need not look at it
             self.answer = event.answer
             self.desk.show_waiting("")
             self.show_view()
@@ -247,10 +257,10 @@ class Design(App[int], inherit_bindings=False):
         """The list of choices of a field was asked for."""
         self.do("field.choose", event.field)
 
-    @on(OptionList.OptionSelected, "#problems")
-    def take_problem(self, event: OptionList.OptionSelected) -> None:
+    @on(Problems.Picked)
+    def take_problem(self, event: Problems.Picked) -> None:
         """A problem was picked: go to its field."""
-        self.do("go.problem", event.option_index)
+        self.do("go.problem", event.number)
 
 
 def run(document: Document, settings: Settings | None = None) -> int:

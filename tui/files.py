@@ -13,6 +13,8 @@ if TYPE_CHECKING:
     from actuator.project.document import Document
     from tui.app import Design
 
+FIRST = "Working out the first answer …"
+
 
 def undo(app: Design) -> None:
     """Take the last change back, and go to its field."""
@@ -112,7 +114,7 @@ async def open_other(app: Design) -> None:
     if not await _may_leave(app, "Open another document"):
         return
     present = app.session.document.path
-    text = await app.push_screen_wait(Entry("Open", str(present.parent if present else Path.cwd()) + "/", _unreadable))
+    text = await app.push_screen_wait(Entry("Open", str(present or Path.cwd()) + ("" if present else "/"), _unreadable))
     if text is not None:
         _begin(app, load(Path(text.strip()).expanduser().absolute()))
 
@@ -135,7 +137,7 @@ def _begin(app: Design, document: Document, saved: Document | None = None) -> No
     app.answer = app.pin = None
     begun = Session.begun(document, saved)
     app.place = Place(0, 0, "")
-    app.desk.show_waiting("Working out the first answer …")
+    app.desk.show_waiting(FIRST)
     app.session = begun.at_revision(app.session.revision + 1)
 
 

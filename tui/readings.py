@@ -6,6 +6,7 @@ from textwrap import wrap
 from typing import TYPE_CHECKING
 
 from tui.screens.dialogs import Reader
+from tui.widgets.about import About
 
 if TYPE_CHECKING:
     from actuator.analysis import Caution
@@ -33,8 +34,11 @@ def helping(app: Design) -> None:
     """Show keys and signs."""
     from tui.actions import ACTIONS, key_text
 
+    about = app.desk.query_one(About).text
+
     def text(width: int) -> str:
-        parts = [_wrapped(part, width) for part in _HELP.strip().split("\n\n")]
+        parts = [_wrapped(about, width)] if about else []
+        parts += [_wrapped(part, width) for part in _HELP.strip().split("\n\n")]
         keys = [
             f"{key_text(action.keys) or 'palette':>9}  {action.title}: {action.help}" for action in ACTIONS.values()
         ]
@@ -98,7 +102,9 @@ def cautions(app: Design) -> None:
     def text(width: int) -> str:
         parts = []
         if row is not None and row.figures:
-            parts.append(f"With {plain_label(row.label)}" if first else f"{plain_label(row.label)}: no caution of its own.")
+            parts.append(
+                f"With {plain_label(row.label)}" if first else f"{plain_label(row.label)}: no caution of its own."
+            )
         parts += [_told(item, width) for item in first]
         if rest:
             parts.append("With this actuator")

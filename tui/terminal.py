@@ -14,14 +14,16 @@ def unfit() -> str:
     str
         One sentence, without a full stop.
     """
-    if not (sys.__stdin__ and sys.__stdin__.isatty() and sys.__stdout__ and sys.__stdout__.isatty()):
+    streams = (sys.__stdin__, sys.__stdout__, sys.__stderr__)  # the screens are written to the last
+    if not all(stream is not None and stream.isatty() for stream in streams):
         return "input and output are not a terminal"
     term = os.environ.get("TERM", "")
     if term in ("", "dumb", "unknown"):
         return f'the terminal says TERM="{term}", which cannot place text'
-    encoding = (sys.__stdout__.encoding or "").lower().replace("-", "").replace("_", "")
-    if encoding != "utf8":
-        return f"the terminal's text is {sys.__stdout__.encoding}, not UTF-8; set LC_ALL=C.UTF-8"
+    for stream in (sys.__stdout__, sys.__stderr__):
+        encoding = (stream.encoding or "") if stream is not None else ""
+        if encoding.lower().replace("-", "").replace("_", "") != "utf8":
+            return f"the terminal's text is {encoding or 'unknown'}, not UTF-8; set LC_ALL=C.UTF-8"
     return ""
 
 

@@ -6,19 +6,20 @@ from typing import TYPE_CHECKING
 
 from textual import events, on
 from textual.app import ComposeResult
-from textual.containers import Horizontal, Vertical, VerticalScroll
+from textual.containers import Horizontal, Vertical
 from textual.screen import Screen
-from textual.widgets import ContentSwitcher, OptionList, Static
-from textual.widgets.option_list import Option
+from textual.widgets import ContentSwitcher, Static
 
 from actuator.errors import Problem
 from tui.screens.cylinder import Cylinder
 from tui.screens.stroke import Stroke
+from tui.widgets.about import About
 from tui.widgets.field import Field
 from tui.widgets.figures import Figures
 from tui.widgets.head import Chooser, Head
 from tui.widgets.keys import Keys
 from tui.widgets.plot import Plot
+from tui.widgets.problems import Problems
 from tui.widgets.sheet import Sheet
 from tui.widgets.verdict import Verdict
 
@@ -50,7 +51,7 @@ class Desk(Screen[None]):
         self._session, self._place = session, place
         self._view: View | None = None
         self._glyphs: Glyphs = "braille"
-        self.problems: tuple[Problem, ...] = ()
+        self._waiting = ""
 
     def compose(self) -> ComposeResult:
         """All that is always there."""
@@ -59,17 +60,15 @@ class Desk(Screen[None]):
         with Horizontal(id="body"):
             yield Sheet(self._session, (self._place.machine, max(self._place.actuator, 1)), id="sheet")
             with Vertical(id="side"):
-                yield OptionList(id="problems", markup=False)
-                yield Static("Working out the first answer …", id="waiting", markup=False)
+                yield Problems(id="problems")
+                yield Static("", id="waiting", markup=False)
                 yield ContentSwitcher(id="view")
-        with VerticalScroll(id="about", can_focus=False):
-            yield Static("", id="about-text", markup=False)
+        yield About(id="about")
         yield Verdict(id="verdict")
         yield Keys(self._keys, id="keys")
 
     async def on_mount(self) -> None:
         """Open the first workspace, and type where it matters."""
-        self.query_one("#problems").display = False
         await self.go("cylinder")
         self.call_after_refresh(self._ready)
 
@@ -92,25 +91,29 @@ class Desk(Screen[None]):
     def show_state(self, state: str, sound: bool) -> None:
         """Say whether the figures are those of the document as it stands."""
         self.query_one(Chooser).say(state, sound)
-        self.query_one("#side").set_class(not sound, "-stale")
+
+    def show_working(self) -> None:
+        """Say that an answer is on its way; out of date stays out of date until it comes."""
+        self.query_one(Chooser).work()
 
     def show_problems(self, problems: tuple[Problem, ...]) -> None:
         """Put problems beside their fields, and all of them above the workspace."""
         self.query_one(Sheet).mark(problems)
-        if problems != self.problems:
-            self.problems = problems
-            listed = self.query_one("#problems", OptionList)
-            listed.clear_options()
-            listed.add_options([Option(f"! {problem}") for problem in problems])
-            listed.display = bool(problems)
-            listed.border_title = f"{len(problems)} problem{'' if len(problems) == 1 else 's'}"
+        self.query_one(Problems).show(problems)
+
+    @property
+    def problems(self) -> tuple[Problem, ...]:
+        """Those that are listed."""
+        return self.query_one(Problems).problems
 
     def show_waiting(self, text: str) -> None:
         """Say why there are no figures yet; empty once there are some."""
         waiting = self.query_one("#waiting", Static)
-        waiting.update(text)
-        waiting.display = bool(text)
-        self.query_one("#view").display = not text
+        if text != self._waiting:
+            self._waiting = text
+            waiting.update(text)
+            waiting.display = bool(text)
+            self.query_one("#view").display = not text
 
     def show_view(self, view: View | None, glyphs: Glyphs) -> None:
         """Show the figures of one actuator."""
@@ -120,11 +123,15 @@ class Desk(Screen[None]):
             self.query_one(Verdict).show(view, glyphs == "ascii")
 
     def _fill(self) -> None:
+        if self._view is not None:
+            self._workspace().show(self._view, self._glyphs)
+
+    def _workspace(self) -> Cylinder | Stroke:
+        """The workspace that is seen."""
         switcher = self.query_one("#view", ContentSwitcher)
-        if self._view is not None and switcher.current:
-            shown = switcher.get_child_by_id(switcher.current)
-            assert isinstance(shown, Cylinder | Stroke)
-            shown.show(self._view, self._glyphs)
+        shown = switcher.get_child_by_id(switcher.current or "")
+        assert isinstance(shown, Cylinder | Stroke)
+        return shown
 
     # --- where one is --------------------------------------------------------------------------------
 
@@ -144,9 +151,7 @@ class Desk(Screen[None]):
     def other_side(self) -> None:
         """Take the focus from the sheet to the workspace, or back."""
         if isinstance(self.focused, Field):
-            switcher = self.query_one("#view", ContentSwitcher)
-            target = next((w for w in switcher.query("Plot, Figures") if w.display and w.focusable), None)
-            self.set_focus(target)
+            self.set_focus(next(iter(self._workspace().query("Plot, Figures")), None))
         elif self.query_one("#sheet").display:
             self._last_field().focus()
 
@@ -159,7 +164,7 @@ class Desk(Screen[None]):
         sheet = self.query_one("#sheet")
         sheet.display = not sheet.display
         if not sheet.display and isinstance(self.focused, Field):
-            self.set_focus(next(iter(self.query("Plot, Figures")), None))
+            self.set_focus(next(iter(self._workspace().query("Plot, Figures")), None))
 
     def go_to(self, path: str) -> bool:
         """Take the focus to the field of a path (or of what it belongs to); whether there is one."""
@@ -194,11 +199,10 @@ class Desk(Screen[None]):
 
     def chosen_row(self, name: str) -> Row | None:
         """The row of a name among the tables of this workspace, or the one chosen in its first table."""
-        switcher = self.query_one("#view", ContentSwitcher)
-        tables = list(switcher.get_child_by_id(switcher.current).query(Figures)) if switcher.current else []
+        tables = list(self._workspace().query(Figures))
         found = [row for figures in tables if (row := figures.row(name)) is not None]
         return found[0] if found else next((figures.row(figures.chosen) for figures in tables), None)
 
     def about(self, text: str) -> None:
         """Two lines about what is under the hands."""
-        self.query_one("#about-text", Static).update(text)
+        self.query_one(About).say(text)

@@ -13,6 +13,8 @@ from textual.screen import ModalScreen
 from textual.widgets import Button, Input, OptionList, Static
 from textual.widgets.option_list import Option
 
+from tui.widgets.page import Page
+
 
 class Ask(ModalScreen[str]):
     """A question with a few answers; escape gives the last one."""
@@ -108,8 +110,7 @@ class Reader(ModalScreen[None]):
         """Title and text; the text is asked for once the width is known."""
         with Vertical(classes="window -tall"):
             yield Static(self._title, classes="window-title", markup=False)
-            with VerticalScroll(classes="window-text"):
-                yield Static("", id="read", markup=False)
+            yield Page(id="page")
             yield Static("↑ ↓ scroll   esc back", classes="window-keys", markup=False)
 
     def on_resize(self) -> None:
@@ -117,6 +118,6 @@ class Reader(ModalScreen[None]):
         self.call_after_refresh(self._fill)
 
     def _fill(self) -> None:
-        room = self.query_one(".window-text", VerticalScroll)
-        self.query_one("#read", Static).update(self._text(max(room.size.width - 1, 30)))
-        room.focus()
+        page = self.query_one(Page)
+        page.show(self._text(max(page.size.width - 2, 30)))
+        page.focus()

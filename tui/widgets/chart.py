@@ -50,7 +50,7 @@ def reading(value: float) -> str:
         return "–"
     if value and (abs(value) >= 1e5 or abs(value) < 1e-3):
         return f"{value:.3g}".replace("-", "−")
-    decimals = max(0, 3 - int(np.floor(np.log10(abs(value)))) if value else 0)
+    decimals = max(0, 3 - int(np.floor(np.log10(abs(value))))) if value else 3
     return f"{value:.{min(decimals, 3)}f}".replace("-", "−")
 
 

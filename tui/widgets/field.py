@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING, ClassVar
 from rich.segment import Segment
 from textual import events
 from textual.binding import Binding, BindingType
-from textual.geometry import Region
+from textual.geometry import Region, Size
 from textual.message import Message
 from textual.reactive import reactive
 from textual.strip import Strip
@@ -43,6 +43,7 @@ class Field(Input):
     Field > .field--problem { color: $text-error; }
     """
 
+    virtual_size: reactive[Size] = reactive(Size(0, 0), layout=False)  # text of any length keeps its row
     label_width: reactive[int] = reactive(22, init=False)
     problem: reactive[str] = reactive("", init=False)
 

@@ -69,12 +69,18 @@ class Figures(Widget, can_focus=True):
 
     def show(self, sections: tuple[Section, ...]) -> None:
         """Show other figures; the choice stays where its row does."""
+        width = self.size.width or 80
+        before = self._laid_out(width).height
         self._sections = sections
         self._layouts.clear()
-        names = self._laid_out(self.size.width or 80).names
-        if self.chosen not in names:
-            self.set_reactive(Figures.chosen, names[0] if names else "")
-        self.refresh(layout=True)
+        if self.chosen not in self.names:
+            self.set_reactive(Figures.chosen, self.names[0] if sections else "")
+        self.refresh(layout=self._laid_out(width).height != before)
+
+    @property
+    def names(self) -> list[str]:
+        """Names of all rows, from the top."""
+        return [row.name for section in self._sections for row in section.rows]
 
     def row(self, name: str) -> Row | None:
         """The row of a name; None where it is not in this table."""

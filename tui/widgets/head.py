@@ -108,6 +108,11 @@ class Chooser(Widget):
             self._state, self._sound = state, sound
             self.refresh()
 
+    def work(self) -> None:
+        """Show that an answer is on its way."""
+        if self._sound:
+            self.say("working …", True)
+
     def _left(self) -> str:
         if self._count == 1:
             return f" {self._actuator}"

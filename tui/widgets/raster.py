@@ -17,6 +17,8 @@ Dots = NDArray[np.bool_]
 _DOTS: dict[Glyphs, tuple[int, int]] = {"braille": (2, 4), "block": (1, 2), "ascii": (1, 1)}
 _BRAILLE = np.array([[1, 8], [2, 16], [4, 32], [64, 128]], dtype=np.int64)
 _BLOCK = " ▀▄█"
+NOTHING = 1e-9
+"""Length of an axis, as a share of its values, below which they count as equal. [1]"""
 
 
 def dots(glyphs: Glyphs) -> tuple[int, int]:
@@ -149,17 +151,17 @@ def rounded(low: float, high: float, most: int) -> list[float]:
     low, high : float
         Least and greatest value to be shown; equal ones are widened. [1]
     most : int
-        Ticks that there is room for. [1]
+        Ticks that there is room for; 3 are always taken for granted. [1]
 
     Returns
     -------
     list of float
         Rising, at least two.
     """
-    if not high > low:
+    if not high - low > NOTHING * max(abs(low), abs(high)):
         half = abs(low) * 0.1 or 1.0
         low, high = low - half, high + half
-    step = step_for(low, high, max(most, 2))
+    step = step_for(low, high, max(most, 3))
     found = [number * step for number in _whole(low, high, step)]
     return found if len(found) > 1 else [found[0], found[0] + step]
 

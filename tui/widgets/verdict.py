@@ -43,6 +43,7 @@ class Verdict(VerticalScroll, can_focus=False):
     def __init__(self, *, id: str | None = None) -> None:
         super().__init__(id=id)
         self._items: tuple[Item, ...] | None = None
+        self._lines = -2
 
     def compose(self) -> ComposeResult:
         """One text, which scrolls where it is long."""
@@ -62,4 +63,6 @@ class Verdict(VerticalScroll, can_focus=False):
     def _fill(self) -> None:
         if self._items is not None:
             text = packed(self._items, self.size.width) if self._items else Text(NOTHING)
-            self.query_one(Static).update(text)
+            lines = text.plain.count("\n") if self._items else -1
+            self.query_one(Static).update(text, layout=lines != self._lines)
+            self._lines = lines
