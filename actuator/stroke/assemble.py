@@ -116,7 +116,7 @@ def assemble(
     events = log[: happened * at.EVENT_WIDTH].reshape(happened, at.EVENT_WIDTH)
     halves = [half_stroke(sign, actuator, machine, site.ambient_pressure, events, par, past) for sign in (1.0, -1.0)]
     mismatch = float(info[at.I_MISMATCH])
-    periodic = mismatch <= 100.0 * fine
+    periodic = mismatch <= 10.0 * fine
     remarks = []
     if not periodic:
         remarks.append(

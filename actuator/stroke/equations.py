@@ -71,8 +71,9 @@ def rates(time: float, y: Row, mode: Row, par: Row, out: Row, base: int, ledger:
     area2 = par[at.AREA_ROD]
     p0 = par[at.P_AMB]
     t0 = par[at.T_AMB]
-    vol1 = par[at.DEAD_CAP] + area1 * x
-    vol2 = par[at.DEAD_ROD] + area2 * (par[at.STROKE] - x)
+    # a stage that is tried may lie beyond an end or below zero: kept positive, the step error then rejects it
+    vol1 = max(par[at.DEAD_CAP] + area1 * x, 0.1 * par[at.DEAD_CAP])
+    vol2 = max(par[at.DEAD_ROD] + area2 * (par[at.STROKE] - x), 0.1 * par[at.DEAD_ROD])
     mass1 = max(y[at.M_CAP], 1e-12)
     mass2 = max(y[at.M_ROD], 1e-12)
     energy1 = max(y[at.U_CAP], 1e-7)

@@ -252,8 +252,9 @@ def simulate(
     last = info[at.I_MISMATCH] > 30.0 * ROUGH
     close, quiet = 3.0 * fine, 1.0
     while status == at.DONE:
-        # quiet cycles at the fine tolerance, then one that is reported, until that one repeats
-        status = run(quiet, close, fine, False, False)
+        # quiet cycles at the fine tolerance, then one that is reported, until that one repeats; the ledger takes
+        # steps of its own, so after a first failure the quiet cycles carry it too
+        status = run(quiet, close, fine, ledger and quiet > 1.0, False)
         cycles += info[at.I_CYCLES]
         rows[1][at.LEDGER_SCALE] = _exergy_scale(events, par)
         if status == at.DONE:
@@ -264,7 +265,7 @@ def simulate(
                 break
             close *= 0.3 if repeats else 1.0
         quiet *= 2.0
-        last = quiet >= 64.0
+        last = quiet >= 256.0
     if status != at.DONE:
         return Refusal(
             "the motion changes too fast to be followed: look for a dead volume, mass or conductance out of proportion"
