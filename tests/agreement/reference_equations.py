@@ -133,15 +133,10 @@ class Model:
         return x < self.part.stroke if way > 0 else x > 0.0
 
     def starts(self, state: State) -> int:
-        """Way in which a resting piston starts: +1, −1, or 0 where it stays.
-
-        The threshold is taken 1e-9 lower, so that a start found by root finding is a start.
-        """
-        force, slack = self.drive(state.p1, state.p2), 1e-9 * self.p_supply["extend"] * self.area1
-        for way in (1, -1):
-            if self.has_room(state.x, way) and way * force > self.threshold(state.x, way) - slack:
-                return way
-        return 0
+        """Way in which a resting piston is driven beyond its threshold: +1, −1, or 0."""
+        force = self.drive(state.p1, state.p2)
+        ways = (way for way in (1, -1) if self.has_room(state.x, way))
+        return next((way for way in ways if way * force > self.threshold(state.x, way)), 0)
 
     def chamber(
         self, p: float, t: float, q: float, t_far: float, vol: float, vol_rate: float, wall: float

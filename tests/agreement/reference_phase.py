@@ -80,9 +80,12 @@ def run_phase(model: Model, state: State, direction: Direction, length: float, r
         if state.way == 0:
             state.way = model.starts(state)
             if state.way == 0:
-                time = rest(model, state, connection, time, until, rtol)
+                time, state.way = rest(model, state, connection, time, until, rtol)
+            if state.way == 0:
                 continue
             course.started[state.way] = time
+            if time >= until:
+                continue
         stop = part.stroke if state.way > 0 else 0.0
         marks = edges | {cut_at} if cutting and not cut else edges
         coming = [mark for mark in marks if state.way * (mark - state.x) > 1e-13]
@@ -102,18 +105,22 @@ def run_phase(model: Model, state: State, direction: Direction, length: float, r
             state.v, state.way = 0.0, 0
 
 
-def rest(model: Model, state: State, connection: Connection, time: float, until: float, rtol: float) -> float:
-    """The piston stands until it starts, or until ``until``; returns that time. [s]"""
+def rest(
+    model: Model, state: State, connection: Connection, time: float, until: float, rtol: float
+) -> tuple[float, int]:
+    """The piston stands until it starts, or until ``until``: that time [s], and the way it starts in."""
 
     def surplus(way: int) -> Callable[[float, Array], float]:
         wanted = model.threshold(state.x, way)
         return lambda _, y: way * model.drive(float(y[0]), float(y[2])) - wanted
 
-    events = [Event(surplus(way), 1.0) for way in (1, -1) if model.has_room(state.x, way)]
-    end, y, _, _ = integrate(model, model.resting(connection, state.x), time, until, state.gas(), rtol, events)
+    ways = [way for way in (1, -1) if model.has_room(state.x, way)]
+    events = [Event(surplus(way), 1.0) for way in ways]
+    rates = model.resting(connection, state.x)
+    end, y, which, _ = integrate(model, rates, time, until, state.gas(), rtol, events)
     state.p1, state.t1, state.p2, state.t2 = y[:4]
     model.tally.take(y[4:], rest=True)
-    return end
+    return end, ways[which] if which >= 0 else 0
 
 
 def move(
