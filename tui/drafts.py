@@ -11,6 +11,7 @@ import fcntl
 import json
 import os
 import re
+import threading
 import uuid
 from dataclasses import dataclass
 from pathlib import Path
@@ -21,6 +22,7 @@ from actuator.settings import draft_path, drafts_folder
 
 if TYPE_CHECKING:
     from actuator.project.document import Document
+    from tui.session import Session
 
 _HEAD = re.compile(r'# draft of (?P<of>"(?:[^"\\\n]|\\.)*"), lock (?P<lock>[0-9a-f]{32})\n')
 
@@ -56,6 +58,29 @@ class Drafts:
     def __init__(self) -> None:
         self._lock = uuid.uuid4().hex
         self._held: int | None = None
+        self._turn = threading.RLock()
+        self._revision = -1
+
+    def follow(self, session: Session) -> None:
+        """Keep the draft of a session where something is unsaved, else take it away.
+
+        Called from any thread; an earlier revision than one that was followed changes nothing. A draft that
+        cannot be written is no reason to stop.
+        """
+        with self._turn, contextlib.suppress(OSError):
+            if session.revision < self._revision:
+                return
+            self._revision = session.revision
+            if session.unsaved:
+                self.keep(session.document)
+            else:
+                self.forget(session.document)
+
+    def end(self, session: Session) -> None:
+        """Take the draft away for good: what was unsaved is saved, or was given up knowingly."""
+        with self._turn:
+            self._revision = session.revision + 1
+            self.forget(session.document)
 
     def keep(self, document: Document) -> Path:
         """Write the draft of a document in one step.
@@ -76,10 +101,11 @@ class Drafts:
 
     def forget(self, document: Document) -> None:
         """Take this program's draft of a document away."""
-        for place in self._places(document):
-            found = _read(place)
-            if found is not None and found.lock == self._lock:
-                _remove(found.place)
+        with self._turn:
+            for place in self._places(document):
+                found = _read(place)
+                if found is not None and found.lock == self._lock:
+                    _remove(found.place)
 
     def discard(self, draft: Draft) -> None:
         """Remove a draft that was left behind."""

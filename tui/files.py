@@ -104,6 +104,7 @@ def _write(app: Design, path: Path) -> bool:
         app.notify(f"Not saved: {fault}", severity="error", timeout=10)
         return False
     app.session = app.session.kept(document)
+    app.drafts.follow(app.session)
     app.drafts.forget(before)
     app.notify(f"Saved {path.name}")
     return True
@@ -133,7 +134,7 @@ def _unreadable(text: str) -> str:
 
 def _begin(app: Design, document: Document, saved: Document | None = None) -> None:
     """Work on another document; its revision goes on, so that no late answer is taken for its own."""
-    app.drafts.forget(app.session.document)
+    app.drafts.end(app.session)
     app.answer = app.pin = None
     begun = Session.begun(document, saved)
     app.place = Place(0, 0, "")
@@ -146,7 +147,7 @@ async def leave(app: Design) -> None:
     if isinstance(app.screen, Ask):
         return
     if await _may_leave(app, "Quit"):
-        app.drafts.forget(app.session.document)
+        app.drafts.end(app.session)
         app.exit(0)
 
 
@@ -189,7 +190,7 @@ async def offer_draft(app: Design) -> None:
         app.drafts.discard(draft)
     elif answer == "take":
         _begin(app, parse(draft.text, document.path), document)
-        app.keep_draft()
+        app.drafts.follow(app.session)
         app.drafts.discard(draft)
 
 

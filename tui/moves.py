@@ -119,8 +119,8 @@ def turn_pin(app: Design) -> None:
         app.pin = app.answer
         app.notify("Pinned: each figure shows its difference to this state.")
     app.show_view()
-    if app.answered == app.session.revision and not app.desk.problems:
-        app.desk.show_state("up to date, pinned" if app.pin else "up to date", sound=True)
+    if app.answered == app.session.revision:
+        app.desk.show_outcome(app.desk.problems, figures=app.answer is not None, pinned=app.pin is not None)
 
 
 def turn_units(app: Design) -> None:

@@ -18,6 +18,8 @@ CAP, ROD, IDEAL, MOTION = "●", "○", "◇", "◆"
 PLAIN = {CAP: "C", ROD: "R", IDEAL: "I", MOTION: "*"}
 """Marks in a terminal whose font has only ASCII."""
 DASH = (3, 3)
+GUTTER = 6
+"""Cells to the left of plots over time. [1]"""
 
 
 def pictures(view: View, plain: bool = False) -> dict[str, Picture]:
@@ -46,7 +48,7 @@ def pictures(view: View, plain: bool = False) -> dict[str, Picture]:
             Curve(name=name, mark=PLAIN[mark] if plain else mark, x=at, y=values, tone=tone)
             for name, mark, values, tone in lines
         )
-        return Picture(title=title, x=time, y=axis, curves=curves)
+        return Picture(title=title, x=time, y=axis, curves=curves, gutter=GUTTER)
 
     end = float(_scaled(np.array([result.part.stroke]), Length, view)[0])
     position = Axis(unit=_unit(Length, view), include=(0.0, end))

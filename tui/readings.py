@@ -58,7 +58,7 @@ def _wrapped(text: str, width: int) -> str:
 
 def working(app: Design) -> None:
     """Show how the chosen figure comes about."""
-    row = app.desk.chosen_row(app.chosen)
+    row = app.desk.chosen_row()
     if app.answer is None or row is None:
         app.notify("Choose a figure first: F6 goes to the figures, ↑ ↓ choose.")
         return
@@ -95,7 +95,7 @@ def cautions(app: Design) -> None:
     machines = app.answer.analysis.machines
     here = machines[app.place.machine - 1].actuators if app.place.machine <= len(machines) else ()
     found = here[app.place.actuator - 1].cautions if 0 < app.place.actuator <= len(here) else ()
-    row = app.desk.chosen_row(app.chosen)
+    row = app.desk.chosen_row()
     first = [item for item in found if row is not None and _goes_with(item, row.figures)]
     rest = [item for item in found if item not in first]
 

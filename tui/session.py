@@ -101,7 +101,7 @@ class Session:
 
     def kept(self, document: Document) -> Session:
         """Take over the document that was written to its file; the way back stays open."""
-        return replace(self, document=document, saved=document, open="")
+        return replace(self, document=document, saved=document, revision=self.revision + 1, open="")
 
     def at_revision(self, revision: int) -> Session:
         """Count revisions on from another session."""

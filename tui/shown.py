@@ -123,14 +123,14 @@ def ledger_sections(view: View) -> tuple[Section, ...]:
         rows.append(
             replace(
                 row,
-                cells=(f"{_fixed(value * factor, decimals)} {unit}", f"{_fixed(share * 100.0, 1)} %"),
+                cells=(_fixed(value * factor, decimals), f"{_fixed(share * 100.0, 1)} %"),
                 unit="",
-                changes=tuple(f"{change} {unit}" if change else "" for change in row.changes),
+                changes=(*row.changes, "") if row.changes else (),
                 share=share,
                 figures=(*row.figures, f"actuator/{share_key}") if share_figure else row.figures,
             )
         )
-    return (Section(title=LEDGER, rows=tuple(rows), heads=("energy", "share")),)
+    return (Section(title=LEDGER, rows=tuple(rows), heads=(unit, "share")),)
 
 
 def _fixed(value: float, decimals: int) -> str:

@@ -7,7 +7,8 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from rich.cells import cell_len
 
-from tui.widgets.chart import Drawn, draw, number, reading
+from tui.widgets.chart import Drawn, draw, number
+from tui.widgets.legend import reading
 from tui.widgets.picture import Axis, Curve, Picture
 from tui.widgets.raster import Glyphs
 
@@ -120,8 +121,8 @@ def test_one_curve_alone_has_neither_legend_nor_marks() -> None:
 
 def test_the_reading_line_gives_place_and_value() -> None:
     rows = text(draw(ramp(), 60, 12, "braille", at=0.5))
-    assert "at 0.500 s" in rows[0]
     assert "200.0" in rows[0]
+    assert "0.500 s" in rows[-1]
     assert any("│" in row[5:] for row in rows[1:])
 
 
@@ -152,12 +153,21 @@ def test_ticks_have_the_decimals_of_their_step() -> None:
     assert number(2e6, 1e6) == "2e+06"
 
 
-def test_readings_have_four_figures() -> None:
-    assert [reading(value) for value in (0.0, 0.5, 12.3456, 312.04, 1.5e6, float("nan"))] == [
-        "0.000",
-        "0.500",
-        "12.35",
-        "312.0",
-        "1.5e+06",
-        "–",
-    ]
+def test_readings_are_given_to_a_thousandth_of_their_axis() -> None:
+    assert [reading(value, 6.0) for value in (0.0, 5.9996, -1e-9, float("nan"))] == ["0.000", "6.000", "0.000", "–"]
+    assert reading(312.04, 400.0) == "312.0"
+    assert reading(-0.25, 2.0) == "−0.250"
+    assert reading(1234567.0, 2e6) == "1234567"
+
+
+def test_values_at_the_reading_line_take_no_more_lines_than_names() -> None:
+    for width in range(20, 80):
+        without = text(draw(loop(), width, 16, "braille"))
+        along = text(draw(loop(), width, 16, "braille", at=1.0))
+        frame = [next(number for number, row in enumerate(rows) if "┤" in row) for rows in (without, along)]
+        assert frame[0] == frame[1], width
+
+
+def test_the_picture_keeps_its_height_where_whole_ticks_would_cost_too_much() -> None:
+    rows = text(draw(ramp(np.interp(TIME, [0.0, 4.0], [0.0, 6.0])), 40, 6, "braille"))
+    assert rows[1].strip(" │┤")  # the curve reaches the top row

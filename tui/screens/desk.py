@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Any
 
 from textual import events, on
 from textual.app import ComposeResult
 from textual.containers import Horizontal, Vertical
+from textual.message import Message
 from textual.screen import Screen
 from textual.widgets import ContentSwitcher, Static
 
@@ -24,6 +26,8 @@ from tui.widgets.sheet import Sheet
 from tui.widgets.verdict import Verdict
 
 if TYPE_CHECKING:
+    from actuator.answer import Answer
+    from actuator.unit_table import System
     from tui.session import Place, Session
     from tui.shown import View
     from tui.tables import Row
@@ -45,6 +49,13 @@ class Desk(Screen[None]):
         (140, "-wide"),
     ]
 
+    @dataclass
+    class Wanted(Message):
+        """Something of the table of actions was asked for with the mouse, or by a widget."""
+
+        name: str
+        arguments: tuple[Any, ...] = ()
+
     def __init__(self, session: Session, place: Place, keys: list[tuple[str, str, str]]) -> None:
         super().__init__()
         self._keys = keys
@@ -52,6 +63,7 @@ class Desk(Screen[None]):
         self._view: View | None = None
         self._glyphs: Glyphs = "braille"
         self._waiting = ""
+        self._table: Figures | None = None
 
     def compose(self) -> ComposeResult:
         """All that is always there."""
@@ -88,18 +100,20 @@ class Desk(Screen[None]):
         self.query_one(Chooser).show(place.name, index, count)
         self.query_one(Sheet).show(session, (place.machine, max(place.actuator, 1)))
 
-    def show_state(self, state: str, sound: bool) -> None:
-        """Say whether the figures are those of the document as it stands."""
-        self.query_one(Chooser).say(state, sound)
+    def show_outcome(self, problems: tuple[Problem, ...], *, figures: bool, pinned: bool) -> None:
+        """Say whether the figures are those of the document as it stands, and what is wrong with it."""
+        self.query_one(Sheet).mark(problems)
+        self.query_one(Problems).show(problems)
+        count = f"{len(problems)} problem{'' if len(problems) == 1 else 's'}"
+        if problems:
+            self.query_one(Chooser).say(f"! OUT OF DATE: {count}" if figures else f"! {count}", sound=False)
+        else:
+            self.query_one(Chooser).say("up to date, pinned" if pinned else "up to date", sound=True)
+        self.show_waiting("" if figures else "No figures until the problems above are put right.")
 
     def show_working(self) -> None:
         """Say that an answer is on its way; out of date stays out of date until it comes."""
         self.query_one(Chooser).work()
-
-    def show_problems(self, problems: tuple[Problem, ...]) -> None:
-        """Put problems beside their fields, and all of them above the workspace."""
-        self.query_one(Sheet).mark(problems)
-        self.query_one(Problems).show(problems)
 
     @property
     def problems(self) -> tuple[Problem, ...]:
@@ -115,12 +129,15 @@ class Desk(Screen[None]):
             waiting.display = bool(text)
             self.query_one("#view").display = not text
 
-    def show_view(self, view: View | None, glyphs: Glyphs) -> None:
-        """Show the figures of one actuator."""
-        self._view, self._glyphs = view, glyphs
-        if view is not None:
-            self._fill()
-            self.query_one(Verdict).show(view, glyphs == "ascii")
+    def show_view(self, answer: Answer, place: Place, system: System, pin: Answer | None, glyphs: Glyphs) -> None:
+        """Show the figures of one actuator of an answer."""
+        from tui.shown import View
+
+        machine, actuator = place.machine - 1, max(place.actuator, 1) - 1
+        self._view = View(answer=answer, machine=machine, actuator=actuator, system=system, pin=pin)
+        self._glyphs = glyphs
+        self._fill()
+        self.query_one(Verdict).show(self._view, glyphs == "ascii")
 
     def _fill(self) -> None:
         if self._view is not None:
@@ -197,11 +214,40 @@ class Desk(Screen[None]):
         elif isinstance(widget, Figures):
             self.about("↑ ↓ choose a figure, enter shows its working, F5 its cautions")
 
-    def chosen_row(self, name: str) -> Row | None:
-        """The row of a name among the tables of this workspace, or the one chosen in its first table."""
+    def chosen_row(self) -> Row | None:
+        """The figure that was chosen last in this workspace, or the first one."""
         tables = list(self._workspace().query(Figures))
-        found = [row for figures in tables if (row := figures.row(name)) is not None]
-        return found[0] if found else next((figures.row(figures.chosen) for figures in tables), None)
+        table = next((table for table in tables if table is self._table), tables[0])
+        return table.row(table.chosen)
+
+    @on(Figures.Chosen)
+    def _take_choice(self, event: Figures.Chosen) -> None:
+        """Working and cautions are asked for in this table from here on."""
+        self._table = event.figures
+
+    @on(Figures.Opened)
+    def _take_opened(self) -> None:
+        self.post_message(self.Wanted("figure.working"))
+
+    @on(Keys.Pressed)
+    def _take_key(self, event: Keys.Pressed) -> None:
+        self.post_message(self.Wanted(event.name))
+
+    @on(Head.Go)
+    def _take_go(self, event: Head.Go) -> None:
+        self.post_message(self.Wanted(f"go.{event.key}"))
+
+    @on(Chooser.Step)
+    def _take_step(self, event: Chooser.Step) -> None:
+        self.post_message(self.Wanted({-1: "go.before", 1: "go.after", 0: "go.list"}[event.by]))
+
+    @on(Field.Choose)
+    def _take_choose(self, event: Field.Choose) -> None:
+        self.post_message(self.Wanted("field.choose", (event.field,)))
+
+    @on(Problems.Picked)
+    def _take_problem(self, event: Problems.Picked) -> None:
+        self.post_message(self.Wanted("go.problem", (event.number,)))
 
     def about(self, text: str) -> None:
         """Two lines about what is under the hands."""

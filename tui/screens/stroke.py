@@ -19,6 +19,8 @@ WIDE = 72
 """Cells from which pictures stand side by side. [1]"""
 LOW = 11
 """Lines that the ledger takes below the pictures. [1]"""
+LEAST = 21
+"""Lines below which pictures side by side are not pressed. [1]"""
 
 
 class Stroke(VerticalScroll, can_focus=False):
@@ -42,7 +44,9 @@ class Stroke(VerticalScroll, can_focus=False):
         """Stand side by side where there is room, and let the pictures use the height."""
         wide = event.size.width >= WIDE
         self.set_class(wide, "-wide")
-        self.query_one("#stroke-plots").styles.height = min(max(event.size.height - LOW, 19), 36) if wide else None
+        self.query_one("#stroke-plots").styles.height = min(max(event.size.height - LOW, LEAST), 36) if wide else None
+        for name in ("#position", "#speed"):
+            self.query_one(name, Plot).bare = wide
 
     def show(self, view: View, glyphs: Glyphs) -> None:
         """Show the cycle of an answer."""

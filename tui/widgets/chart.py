@@ -6,13 +6,12 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from tui.widgets.legend import CURSOR, FRAME, LABEL, Cell, around, index_at, legend, reading, text_cells
 from tui.widgets.picture import Axis, Curve, Picture
-from tui.widgets.raster import Floats, Glyphs, cells, dots, inside, polyline, rounded, scaled
+from tui.widgets.raster import NOTHING, Floats, Glyphs, cells, dots, inside, polyline, rounded, scaled
 
-FRAME, LABEL, TITLE, CURSOR = -1, -2, -3, -4
-"""Tones of what is no curve; a curve's tone is 1 to 4, 0 is blank. [1]"""
-
-Cell = tuple[str, int]
+LOSS = 1.3
+"""Length of an axis over that of its data, beyond which whole ticks at its ends are given up. [1]"""
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,16 +43,6 @@ def number(value: float, step: float) -> str:
     return f"{value + 0.0:.{decimals}f}".replace("-", "−")
 
 
-def reading(value: float) -> str:
-    """A value at the reading line, four digits."""
-    if not np.isfinite(value):
-        return "–"
-    if value and (abs(value) >= 1e5 or abs(value) < 1e-3):
-        return f"{value:.3g}".replace("-", "−")
-    decimals = max(0, 3 - int(np.floor(np.log10(abs(value))))) if value else 3
-    return f"{value:.{min(decimals, 3)}f}".replace("-", "−")
-
-
 @dataclass(frozen=True, slots=True)
 class _Scale:
     """An axis as drawn: its ends, and values with their texts."""
@@ -64,64 +53,24 @@ class _Scale:
 
 
 def _scale(axis: Axis, data: list[Floats], most: int) -> _Scale:
-    """Axis around all finite values, with no more than ``most`` labels."""
-    parts = [part[np.isfinite(part)] for part in (*data, np.array(axis.include, dtype=np.float64))]
-    values = np.concatenate(parts)
-    low, high = (float(values.min()), float(values.max())) if len(values) else (0.0, 1.0)
-    if axis.tight and high > low:
+    """Axis around all finite values, with no more than ``most`` labels.
+
+    Its ends are whole ticks, unless the picture would lose too much of its height to them.
+    """
+    low, high = around(axis, data)
+    marks = rounded(low, high, most)
+    real = high - low > NOTHING * max(abs(low), abs(high))
+    if real and (axis.tight or marks[-1] - marks[0] > LOSS * (high - low)):
         marks = inside(low, high, most)
     else:
-        marks = rounded(low, high, most)
         low, high = marks[0], marks[-1]
     step = marks[1] - marks[0] if len(marks) > 1 else abs(low) or 1.0
     return _Scale(low, high, tuple((value, number(value, step)) for value in marks))
 
 
-def index_at(curve: Curve, at: float) -> int:
-    """Point of a curve next to the reading line's place."""
-    along = curve.x if curve.at is None else curve.at
-    right = int(np.searchsorted(along, at))
-    if right <= 0 or right >= len(along):
-        return min(max(right, 0), len(along) - 1)
-    return right if along[right] - at < at - along[right - 1] else right - 1
-
-
-def legend(picture: Picture, width: int, at: float | None) -> list[list[Cell]]:
-    """Title with its unit, then curves by their marks (with values at the reading line), wrapped."""
-    items: list[list[Cell]] = [_text(f"{picture.title} [{picture.y.unit}]", TITLE)]
-    if at is not None:
-        items.append(_text(f"at {reading(at)} {picture.reads or picture.x.unit}", CURSOR))
-    for curve in picture.curves:
-        value = reading(float(curve.y[index_at(curve, at)])) if at is not None and _is_read(curve) else ""
-        if len(picture.curves) > 1:
-            items.append([(curve.mark, curve.tone), *_text(f" {curve.name} {value}".rstrip(), LABEL)])
-        elif value:
-            items.append(_text(value, CURSOR))
-    lines: list[list[Cell]] = [[]]
-    for item in items:
-        gap = 2 if lines[-1] else 0
-        if lines[-1] and len(lines[-1]) + gap + len(item) > width:
-            lines.append([])
-            gap = 0
-        lines[-1] += [(" ", 0)] * gap + item[:width]
-    return lines
-
-
-def _text(text: str, tone: int) -> list[Cell]:
-    return [(char, tone) for char in text]
-
-
-def _is_read(curve: Curve) -> bool:
-    """Whether one place of the reading line has one value on the curve."""
-    return bool(len(curve.y)) and (curve.at is not None or not _is_loop(curve))
-
-
-def _is_loop(curve: Curve) -> bool:
-    """Whether the curve runs back along x."""
-    return bool((np.diff(curve.x) < 0.0).any())
-
-
-def draw(picture: Picture, width: int, height: int, glyphs: Glyphs, at: float | None = None) -> Drawn:
+def draw(
+    picture: Picture, width: int, height: int, glyphs: Glyphs, at: float | None = None, bare: bool = False
+) -> Drawn:
     """Draw a picture into ``width`` times ``height`` cells.
 
     Parameters
@@ -132,6 +81,8 @@ def draw(picture: Picture, width: int, height: int, glyphs: Glyphs, at: float | 
     glyphs : {"braille", "block", "ascii"}
     at : float, optional
         Where the reading line stands, in the unit of the horizontal axis (or of the curves' ``at``). [1]
+    bare : bool
+        Leave the numbers of the horizontal axis to the plot below.
 
     Returns
     -------
@@ -139,19 +90,21 @@ def draw(picture: Picture, width: int, height: int, glyphs: Glyphs, at: float | 
     """
     plain = glyphs == "ascii"
     head = legend(picture, width, at)
-    inner = height - len(head) - 2
+    inner = height - len(head) - (1 if bare else 2)
     if inner < 2 or width < 16:
         rows = [*head, *([[]] * height)][:height]
         return Drawn(tuple(_row(row, width) for row in rows), 0.0, 0.0, 0, 0)
-    y_scale = _scale(picture.y, [curve.y for curve in picture.curves], min(max(3, inner // 2), 8))
-    gutter = max(len(text) for _, text in y_scale.labels) + 1
+    y_scale = _scale(picture.y, [curve.y for curve in picture.curves], min(max(3, (inner + 1) // 2), 8))
+    gutter = max(picture.gutter, max(len(text) for _, text in y_scale.labels) + 1)
     count = width - gutter - 1
     x_scale = _scale(picture.x, [curve.x for curve in picture.curves], max(3, count // 7))
     x_ends, y_ends = (x_scale.low, x_scale.high), (y_scale.low, y_scale.high)
     canvas = _curves(picture, (count, inner), glyphs, y_ends, x_ends)
     _cursor(canvas, picture, x_ends, y_ends, at, plain)
     rows = _framed(canvas, y_scale, gutter, plain)
-    rows += _bottom(picture.x, x_scale, gutter, count, width, plain)
+    rows += _bottom(picture.x, x_scale, gutter, count, width, plain)[: 1 if bare else 2]
+    if at is not None and not bare:
+        _moment(rows[-1], picture, x_ends, gutter, count, at)
     finished = tuple(_row(row, width) for row in [*head, *rows][:height])
     return Drawn(finished, *x_ends, gutter, count)
 
@@ -236,6 +189,16 @@ def _cursor(
             row[column] = (char if char != " " else "|" if plain else "│", CURSOR)
 
 
+def _moment(row: list[Cell], picture: Picture, x_ends: tuple[float, float], gutter: int, count: int, at: float) -> None:
+    """Put the reading line's place between the numbers below it; on a loop it has none."""
+    if any(curve.at is not None for curve in picture.curves):
+        return
+    text = f" {reading(at, x_ends[1] - x_ends[0])} {picture.x.unit} "
+    column = gutter + round(float(scaled(np.array([at]), *x_ends, count)[0]))
+    start = max(min(column - len(text) // 2, len(row) - len(text)), 0)
+    row[start : start + len(text)] = text_cells(text, CURSOR)[: len(row) - start]
+
+
 def _framed(canvas: list[list[Cell]], scale: _Scale, gutter: int, plain: bool) -> list[list[Cell]]:
     """Ticks and their numbers to the left of the canvas."""
     inner = len(canvas)
@@ -245,7 +208,7 @@ def _framed(canvas: list[list[Cell]], scale: _Scale, gutter: int, plain: bool) -
     rows = []
     for y, row_cells in enumerate(canvas):
         edge = "|" if plain else "┤" if y in texts else "│"
-        rows.append([*_text(texts.get(y, "").rjust(gutter - 1), LABEL), (edge, FRAME), *row_cells])
+        rows.append([*text_cells(texts.get(y, "").rjust(gutter - 1), LABEL), (edge, FRAME), *row_cells])
     return rows
 
 
@@ -262,5 +225,5 @@ def _bottom(axis: Axis, scale: _Scale, gutter: int, count: int, width: int, plai
         if start + len(shown) < free or number_of == 0:
             below[start : start + len(shown)] = shown
             free = start
-    frame = [*_text(" " * (gutter - 1), 0), *_text(("+" if plain else "└") + "".join(line), FRAME)]
-    return [frame, _text("".join(below), LABEL)]
+    frame = [*text_cells(" " * (gutter - 1), 0), *text_cells(("+" if plain else "└") + "".join(line), FRAME)]
+    return [frame, text_cells("".join(below), LABEL)]

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING, ClassVar
 from rich.segment import Segment
 from textual import events
 from textual.binding import Binding, BindingType
-from textual.geometry import Region, Size
+from textual.geometry import Region, Size, Spacing
 from textual.message import Message
 from textual.reactive import reactive
 from textual.strip import Strip
@@ -86,7 +86,7 @@ class Field(Input):
     def watch_problem(self) -> None:
         """Grow by the lines of the problem."""
         self._fit()
-        self.refresh(layout=True)
+        self.refresh()
 
     def on_resize(self, event: events.Resize) -> None:  # noqa: ARG002
         """Wrap the problem and cut the hint to the width."""
@@ -94,8 +94,11 @@ class Field(Input):
 
     def _fit(self) -> None:
         """Set padding, height and hint to what there is room for."""
-        self.styles.padding = (0, 2, 0, self.label_width + 2)
-        self.styles.height = 1 + len(self._told())
+        padding, height = Spacing(0, 2, 0, self.label_width + 2), 1 + len(self._told())
+        if self.styles.padding != padding:
+            self.styles.padding = padding
+        if self.styles.height is None or self.styles.height.value != height:
+            self.styles.height = height
         room = max(self.outer_size.width - self.label_width - 4, 8)
         hint = self.spec.default or ("left out" if not self.spec.example else f"e.g. {self.spec.example}")
         self.placeholder = hint if len(hint) <= room else hint[: room - 1] + "…"

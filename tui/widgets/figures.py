@@ -29,7 +29,7 @@ class Figures(Widget, can_focus=True):
         Binding("right", "across(1)", "Column to the right", show=False),
         Binding("home", "end(0)", "First figure", show=False),
         Binding("end", "end(-1)", "Last figure", show=False),
-        Binding("enter", "app.working", "Working", show=False),
+        Binding("enter", "open", "Working", show=False),
     ]
     COMPONENT_CLASSES: ClassVar[set[str]] = {
         "figures--title",
@@ -54,6 +54,17 @@ class Figures(Widget, can_focus=True):
 
         figures: Figures
         name: str
+
+        @property
+        def control(self) -> Figures:
+            """The table."""
+            return self.figures
+
+    @dataclass
+    class Opened(Message):
+        """The working of the chosen figure is asked for."""
+
+        figures: Figures
 
         @property
         def control(self) -> Figures:
@@ -118,7 +129,7 @@ class Figures(Widget, can_focus=True):
             style = self.get_component_rich_style(f"figures--{what}") if what != "body" else plain
             if chosen:
                 style += Style(bold=True, reverse=self.has_focus)
-            sign = "›" if chosen and number == 0 and text[:1] == " " else text[:1]
+            sign = "›" if chosen and line.first and number == 0 and text[:1] == " " else text[:1]
             segments.append(Segment(sign + text[1:], style))
         return segments
 
@@ -174,6 +185,10 @@ class Figures(Widget, can_focus=True):
         if near:
             self.chosen = min(near)[1]
 
+    def action_open(self) -> None:
+        """Ask for the working of the chosen figure."""
+        self.post_message(self.Opened(self))
+
     def on_click(self, event: events.Click) -> None:
         """Choose; a second click asks for the working."""
         row = self._laid_out(self.size.width).row_at(event.x, event.y)
@@ -181,4 +196,4 @@ class Figures(Widget, can_focus=True):
             again = row == self.chosen and event.chain >= 2
             self.chosen = row
             if again:
-                self.app.run_worker(self.app.run_action("app.working"), exclusive=False)
+                self.action_open()

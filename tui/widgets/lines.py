@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from textwrap import wrap
 
 from tui.tables import Row, Section
@@ -29,10 +29,13 @@ class Line:
         Together as wide as the column.
     row : str
         Name of the row that it belongs to; empty for headings.
+    first : bool
+        Whether it is the first line of its row.
     """
 
     parts: tuple[Part, ...]
     row: str = ""
+    first: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -87,8 +90,8 @@ class _Shape:
     label: int
 
     def numbers(self, cells: tuple[str, ...], unit: str) -> str:
-        """Numbers to the right of their columns, then the unit."""
-        filled = (*cells, *[""] * (len(self.columns) - len(cells)))
+        """Numbers to the right of their columns, one alone in the last, then the unit."""
+        filled = (*[""] * (len(self.columns) - len(cells)), *cells)
         text = "".join(" " + cell.rjust(wide) for cell, wide in zip(filled, self.columns, strict=True))
         return text + (" " + unit.ljust(self.unit) if self.unit else "")
 
@@ -126,7 +129,8 @@ def section_lines(section: Section, width: int, plain: bool = False) -> list[Lin
     shape = _shape(section)
     lines = _heading(section, shape, width, plain)
     for row in section.rows:
-        lines += _row_lines(row, shape, width, plain)
+        made = _row_lines(row, shape, width, plain)
+        lines += [replace(line, first=number == 0) for number, line in enumerate(made)]
     return lines
 
 

@@ -71,6 +71,8 @@ class Picture:
         The last is drawn over the others. One alone needs no legend.
     reads : str
         Unit of the reading line's place, where it is not the horizontal axis's.
+    gutter : int
+        Cells to the left of the frame, at least: plots below each other then share their axis. [1]
     """
 
     title: str
@@ -78,3 +80,4 @@ class Picture:
     y: Axis
     curves: tuple[Curve, ...]
     reads: str = ""
+    gutter: int = 0

@@ -57,6 +57,7 @@ class Plot(Widget, can_focus=True):
 
     at: reactive[float | None] = reactive(None, init=False)
     glyphs: reactive[Glyphs] = reactive("braille", init=False)
+    bare: reactive[bool] = reactive(False, init=False)
 
     @dataclass
     class Moved(Message):
@@ -100,6 +101,10 @@ class Plot(Widget, can_focus=True):
         """Draw with the reading line elsewhere."""
         self._forget()
 
+    def watch_bare(self) -> None:
+        """Draw with or without numbers below."""
+        self._forget()
+
     def watch_glyphs(self) -> None:
         """Draw with other characters."""
         self._forget()
@@ -124,12 +129,12 @@ class Plot(Widget, can_focus=True):
         return self._strips[y] if y < len(self._strips) else Strip.blank(self.size.width, self.rich_style)
 
     def _strips_of(self, picture: Picture) -> list[Strip]:
-        from tui.widgets import chart  # numpy stays off the first paint
+        from tui.widgets import chart, legend  # numpy stays off the first paint
 
         if self._drawn is None:
-            self._drawn = chart.draw(picture, self.size.width, self.size.height, self.glyphs, self.at)
+            self._drawn = chart.draw(picture, self.size.width, self.size.height, self.glyphs, self.at, self.bare)
         plain = self.rich_style
-        names = {chart.FRAME: "frame", chart.LABEL: "label", chart.TITLE: "title", chart.CURSOR: "cursor"}
+        names = {legend.FRAME: "frame", legend.LABEL: "label", legend.TITLE: "title", legend.CURSOR: "cursor"}
         styles = {0: plain} | {
             tone: self.get_component_rich_style(f"plot--{names.get(tone, tone)}") for tone in (*names, 1, 2, 3, 4)
         }

@@ -40,7 +40,6 @@ class Group(Vertical):
 
     def __init__(self, group: SheetGroup, session: Session) -> None:
         super().__init__()
-        self.border_title = None
         self._group = group
         self._session = session
 
@@ -49,6 +48,12 @@ class Group(Vertical):
         yield Static(self._group.title, classes="heading", markup=False)
         for spec in self._group.fields:
             yield Field(spec, self._session.text(spec.path))
+
+
+class Rest(Vertical):
+    """Groups below the first screen."""
+
+    DEFAULT_CSS = "Rest { height: auto; }"
 
 
 class Sheet(VerticalScroll, can_focus=False):
@@ -63,9 +68,9 @@ class Sheet(VerticalScroll, can_focus=False):
 
     def compose(self) -> ComposeResult:
         """The first groups now, the others right after the first paint."""
-        for number, group in enumerate(groups_of(*self._place)):
-            made = Group(group, self._session)
-            yield made if number < AT_ONCE else Lazy(made)
+        groups = [Group(group, self._session) for group in groups_of(*self._place)]
+        yield from groups[:AT_ONCE]
+        yield Lazy(Rest(*groups[AT_ONCE:]))
 
     def on_resize(self, event: events.Resize) -> None:
         """Give labels their room, texts the rest."""
@@ -74,7 +79,7 @@ class Sheet(VerticalScroll, can_focus=False):
 
     def label_width(self, width: int) -> int:
         """Cells for labels in a sheet of that width. [1]"""
-        return max(12, min(LABELS, width - 20))
+        return max(12, min(LABELS, width - 19))
 
     def fields(self) -> Iterator[Field]:
         """All fields that are built."""
