@@ -38,7 +38,8 @@ def passage(p_up: float, p_down: float, temp_up: float, c: float, b: float, m: f
 
     .. math:: q_m = C p_1 \rho_0 \sqrt{T_0/T_1} [1 - ((r - b)/(1 - b))^2]^m
 
-    the bracket being 1 for r ≤ b, and for r > 0.999 the value at 0.999 times (1 - r)/0.001.
+    the bracket being 1 for r ≤ b, and for r > 0.999 the value at 0.999 times (1 - r)/0.001. The bracket is taken
+    under the root of T₀/T₁, as its power 2m.
 
     References
     ----------
@@ -46,16 +47,29 @@ def passage(p_up: float, p_down: float, temp_up: float, c: float, b: float, m: f
     """
     if c <= 0.0 or p_down >= p_up:
         return 0.0
-    choked = c * p_up * RHO_ISO6358 * math.sqrt(TEMP_ANR / temp_up)
-    r = p_down / p_up
-    if r <= b:
-        return choked
     linear = 1.0
-    if r > LINEAR_FROM:
-        linear = (1.0 - r) / (1.0 - LINEAR_FROM)
-        r = LINEAR_FROM
-    share = (r - b) / (1.0 - b)
-    bracket = 1.0 - share * share
-    if m == 0.5:
-        return float(choked * linear * math.sqrt(bracket))
-    return float(choked * linear * math.exp(m * math.log(bracket)))
+    if p_down > LINEAR_FROM * p_up:
+        linear = (p_up - p_down) / ((1.0 - LINEAR_FROM) * p_up)
+        p_down = LINEAR_FROM * p_up
+    bracket = 1.0
+    if p_down > b * p_up:
+        share = (p_down - b * p_up) / ((1.0 - b) * p_up)
+        bracket = 1.0 - share * share
+        if m != 0.5:
+            bracket = math.exp(2.0 * m * math.log(bracket))
+    return c * p_up * RHO_ISO6358 * linear * math.sqrt(TEMP_ANR / temp_up * bracket)
+
+
+def passage_slope(p_up: float, p_down: float, temp_up: float, c: float, b: float, m: float) -> float:
+    """Derivative of :func:`passage` by the downstream pressure, never above zero. [kg/(s·Pa)]
+
+    Parameters as there, ``p_down`` ≤ ``p_up``. The flow is of degree one in both pressures, so that the derivative
+    by the upstream pressure is (flow - p₂·slope)/p₁ (Euler).
+    """
+    if p_down > LINEAR_FROM * p_up:
+        return -passage(p_up, LINEAR_FROM * p_up, temp_up, c, b, m) / ((1.0 - LINEAR_FROM) * p_up)
+    if p_down <= b * p_up:
+        return 0.0
+    share = (p_down - b * p_up) / ((1.0 - b) * p_up)
+    relative = -2.0 * m * share / ((1.0 - share * share) * (1.0 - b) * p_up)
+    return relative * passage(p_up, p_down, temp_up, c, b, m)

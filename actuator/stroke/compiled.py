@@ -24,11 +24,11 @@ import platformdirs
 
 from actuator.flow import scalar
 from actuator.mechanics import friction
-from actuator.stroke import cycle, equations, events, layout, steppers
+from actuator.stroke import advance, batch, cycle, dopri, equations, events, layout, ledger, rodas, slopes, steppers
 
 Engine = Literal["auto", "compiled", "interpreted"]
 
-_MODULES = (scalar, friction, layout, equations, events, steppers, cycle)
+_MODULES = (scalar, friction, layout, dopri, rodas, equations, slopes, steppers, ledger, events, advance, cycle, batch)
 PATIENCE = 6
 """Strokes that a process computes interpreted before it begins to load the compiled kernel: loading costs more. [1]"""
 _OFF = "ACTUATOR_INTERPRETED"
@@ -58,8 +58,8 @@ def source_hash() -> str:
     for module in (*_MODULES, sys.modules["actuator.air.gas"], sys.modules[__name__]):
         assert module.__file__ is not None
         digest.update(Path(module.__file__).read_bytes())
-    assert cycle.__file__ is not None
-    digest.update(str(Path(cycle.__file__).stat().st_mtime_ns).encode())  # numba's own stamp of the entry's file
+    assert batch.__file__ is not None
+    digest.update(str(Path(batch.__file__).stat().st_mtime_ns).encode())  # numba's own stamp of the entry's file
     for package in ("numba", "llvmlite", "numpy"):
         try:
             digest.update(importlib.metadata.version(package).encode())
@@ -93,8 +93,24 @@ def _ready_mark(folder: Path) -> Path:
     return folder / "ready"
 
 
+def _options(entry: bool, cached: bool) -> dict[str, Any]:
+    """Options for numba of one function.
+
+    The kernel neither makes nor keeps an array, so arrays need no counting of references (``_nrt``), which would
+    cost as much as the equations. Only the entry is called from Python and has a cache.
+    """
+    return {
+        "nogil": True,
+        "error_model": "numpy",
+        "_nrt": False,
+        "no_cpython_wrapper": not entry,
+        "no_cfunc_wrapper": True,
+        "cache": entry and cached,
+    }
+
+
 def bind() -> Settle:
-    """Jitted twin of ``cycle.settle``, from the cache where it is warm; compiles where it is not.
+    """Jitted twin of ``batch.batch``, from the cache where it is warm; compiles where it is not.
 
     Returns
     -------
@@ -118,7 +134,8 @@ def bind() -> Settle:
     row = numba.types.Array(numba.float64, 1, "C")
     flags = numba.types.Array(numba.uint8, 1, "C")
     number = numba.float64
-    signature = number(*([number] * 5), numba.boolean, *([row] * 17), flags)
+    table = numba.types.Array(numba.float64, 2, "C")
+    signature = number(*([number] * 4), numba.boolean, row, *([table] * 8), row, row, row, flags)
     twins: dict[str, Any] = {}
     for name, function in functions.items():
         copy = types.FunctionType(
@@ -126,15 +143,15 @@ def bind() -> Settle:
         )
         copy.__module__ = function.__module__
         copy.__qualname__ = function.__qualname__
-        twins[name] = numba.njit(nogil=True, error_model="numpy", cache=name == "settle" and folder is not None)(copy)
+        twins[name] = numba.njit(**_options(entry=name == "batch", cached=folder is not None))(copy)
     for namespace in namespaces.values():
         namespace.update((name, twin) for name, twin in twins.items() if name in namespace)
-    settle = twins["settle"]
-    settle.compile(signature)
-    settle.disable_compile()
+    entry = twins["batch"]
+    entry.compile(signature)
+    entry.disable_compile()
     if folder is not None:
         _ready_mark(folder).touch()
-    compiled: Settle = settle
+    compiled: Settle = entry
     return compiled
 
 
@@ -216,7 +233,7 @@ def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
         If ``"compiled"`` is wanted and cannot be had.
     """
     if wanted == "interpreted":
-        return cycle.settle, False
+        return batch.batch, False
     with _lock:
         _state.asked += 1
         patient = _state.asked <= PATIENCE
@@ -227,7 +244,7 @@ def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
             return _state.settle, True
         if wanted == "compiled":
             raise RuntimeError(_state.remark or "the compiled kernel is switched off")
-    return cycle.settle, False
+    return batch.batch, False
 
 
 def remark() -> str:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from actuator.air.gas import GAMMA
 from actuator.stroke import layout as at
-from actuator.stroke.equations import Row, drive, excess
+from actuator.stroke.equations import Row, State, drive, excess
 
 END, REVERSAL, EDGE, START = 0, 1, 2, 3
 
@@ -34,7 +34,7 @@ def next_edge(x: float, mode: Row, par: Row, edges: Row) -> float:
     return -par[at.STROKE]
 
 
-def event_value(kind: int, y: Row, mode: Row, par: Row, target: float) -> float:
+def event_value(kind: int, y: State, mode: Row, par: Row, target: float) -> float:
     """Rises through zero where the event is: position past ``target``, reversal, start. [m, m/s, N]"""
     if kind == REVERSAL:
         return -mode[at.DIRECTION] * y[at.V]
@@ -43,21 +43,19 @@ def event_value(kind: int, y: Row, mode: Row, par: Row, target: float) -> float:
     return mode[at.DIRECTION] * (y[at.X] - target)
 
 
-def event_slope(kind: int, y: Row, k: Row, base: int, mode: Row, par: Row) -> float:
-    """Rate of the event function, from the rates at ``k[base:]``."""
+def event_slope(kind: int, y: State, k: State, mode: Row, par: Row) -> float:
+    """Rate of the event function where the rates are ``k``."""
     if kind == REVERSAL:
-        return -mode[at.DIRECTION] * k[base + at.V]
+        return -mode[at.DIRECTION] * k[at.V]
     if kind == START:
         vol1 = par[at.DEAD_CAP] + par[at.AREA_CAP] * y[at.X]
         vol2 = par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - y[at.X])
-        rise = (GAMMA - 1.0) * (
-            k[base + at.U_CAP] / vol1 * par[at.AREA_CAP] - k[base + at.U_ROD] / vol2 * par[at.AREA_ROD]
-        )
+        rise = (GAMMA - 1.0) * (k[at.U_CAP] / vol1 * par[at.AREA_CAP] - k[at.U_ROD] / vol2 * par[at.AREA_ROD])
         return rise if start_direction(y, mode, par) > 0.0 else -rise
-    return mode[at.DIRECTION] * k[base + at.X]
+    return mode[at.DIRECTION] * k[at.X]
 
 
-def start_direction(y: Row, mode: Row, par: Row) -> float:
+def start_direction(y: State, mode: Row, par: Row) -> float:
     """Way in which the piston is closer to starting: 1 extending, -1 retracting. [1]"""
     if y[at.X] >= par[at.STROKE]:
         return -1.0
@@ -86,20 +84,29 @@ def first_guess(g0: float, s0: float, g1: float, s1: float, h: float) -> float:
     return 0.5 * (low + high) * h
 
 
-def record(time: float, y: Row, k: Row, mode: Row, history: Row, info: Row) -> None:
+def record(time: float, y: State, k: State, mode: Row, history: Row, info: Row) -> None:
     """Append time, state and rates to the history while there is room."""
     base = int(info[at.I_ROWS]) * at.HISTORY_WIDTH
     if base + at.HISTORY_WIDTH > len(history):
         return
-    history[base] = time
-    for i in range(at.N_STATE):
-        history[base + at.H_STATE + i] = y[i]
-        history[base + at.H_RATE + i] = k[i]
+    history[base + at.H_TIME] = time
+    store(y, history, base + at.H_STATE)
+    store(k, history, base + at.H_RATE)
     history[base + at.H_SIDE] = mode[at.SIDE]
     info[at.I_ROWS] += 1.0
 
 
-def log(time: float, code: float, sign: float, y: Row, events: Row, info: Row) -> None:
+def store(y: State, row: Row, base: int) -> None:
+    """Write a state to ``row[base:]``."""
+    row[base] = y[0]
+    row[base + 1] = y[1]
+    row[base + 2] = y[2]
+    row[base + 3] = y[3]
+    row[base + 4] = y[4]
+    row[base + 5] = y[5]
+
+
+def log(time: float, code: float, sign: float, y: State, events: Row, info: Row) -> None:
     """Append an event to the log while there is room."""
     base = int(info[at.I_EVENTS]) * at.EVENT_WIDTH
     if base + at.EVENT_WIDTH <= len(events):
@@ -113,10 +120,14 @@ def log(time: float, code: float, sign: float, y: Row, events: Row, info: Row) -
     info[at.I_EVENTS] += 1.0
 
 
-def first_step(y: Row, k: Row, par: Row) -> float:
+def first_step(y: State, k: State, par: Row) -> float:
     """Step to try first: a hundredth of the shortest time in which a state changes by its own size. [s]"""
-    fastest = abs(k[at.X]) / par[at.STROKE]
-    fastest = max(fastest, abs(k[at.V]) / (abs(y[at.V]) + 0.1))
-    for i in range(at.M_CAP, at.N_STATE):
-        fastest = max(fastest, abs(k[i]) / y[i])
+    fastest = max(
+        abs(k[at.X]) / par[at.STROKE],
+        abs(k[at.V]) / (abs(y[at.V]) + 0.1),
+        abs(k[at.M_CAP]) / y[at.M_CAP],
+        abs(k[at.U_CAP]) / y[at.U_CAP],
+        abs(k[at.M_ROD]) / y[at.M_ROD],
+        abs(k[at.U_ROD]) / y[at.U_ROD],
+    )
     return 0.01 / max(fastest, 1e-6)

@@ -19,11 +19,11 @@ N_STATE = 6
     Q_X_SIDE,
     Q_FILLING,
     Q_RETURNED,
+    Q_ENTROPY,
+    Q_PISTON,
     Q_DRAWN,
     Q_GIVEN_BACK,
     Q_VENTED,
-    Q_ENTROPY,
-    Q_PISTON,
     Q_IN_CAP,
     Q_IN_ROD,
     Q_OUT_CAP,
@@ -38,8 +38,12 @@ N_STATE = 6
     Q_WALL_ROD,
 ) = range(N_STATE, N_STATE + 29)
 N_LEDGER = N_STATE + 29
-N_WATCHED = Q_X_SIDE + 1
-"""With the ledger, the step error of the integrals up to here counts as well. [1]"""
+N_INTEGRAL = N_LEDGER - N_STATE
+N_WATCHED = Q_X_SIDE + 1 - N_STATE
+"""With the ledger, the step error of the first integrals, up to here, counts as well. [1]"""
+N_WORK = 4 * N_INTEGRAL
+N_LOSS = Q_PISTON + 1 - N_STATE
+"""Integrals from here on are linear in the transfers of the chambers, those before are not. [1]"""
 
 # Parameters: SI, absolute pressures.
 (
@@ -82,11 +86,15 @@ ROD_FILL = CAP_FILL + 12
 N_PAR = CAP_FILL + 24
 
 # Mode of motion and connection.
-DIRECTION, SIDE, SWITCHED, OPEN_OVER, SHUT, PROCESS, ARMED, STIFF = range(8)
+DIRECTION, SIDE, SWITCHED, OPEN_OVER, SHUT, PROCESS, ARMED, STIFF, CAP_LINK = range(9)
 """DIRECTION -1, 0, 1; SIDE 1 = cap on supply, -1 = rod on supply; SWITCHED = time of switching [s];
 OPEN_OVER = ramp [s]; SHUT 1 = supply path cut off; PROCESS = process force where the piston is [N];
 ARMED 0 = a start has just failed; STIFF 1 = implicit steps while moving."""
-N_MODE = 8
+PORT_P, PORT_T, INTO, OUT_OF = 0, 1, 2, 5
+"""From CAP_LINK and ROD_LINK on, what the chamber is connected to: pressure [Pa] and temperature [K] beyond its port,
+(C, b, m) of the path into it and of the path out of it."""
+ROD_LINK = CAP_LINK + 8
+N_MODE = CAP_LINK + 16
 
 # Event log: one row of EVENT_WIDTH numbers for each event.
 E_TIME, E_CODE, E_SIGN, E_X, E_V, E_M_CAP, E_M_ROD = range(7)
@@ -98,9 +106,10 @@ MAX_EVENTS = 400
 H_TIME, H_STATE, H_RATE, H_SIDE = 0, 1, 7, 13
 HISTORY_WIDTH = 14
 
-# Info returned by a cycle.
-I_EVENTS, I_ROWS, I_RATES, I_STEPS, I_CYCLES, I_MISMATCH, I_TIME = range(7)
-N_INFO = 7
+# Info returned for a case: counters, then time and speed of the first arrival at each end (batches only).
+I_EVENTS, I_ROWS, I_RATES, I_STEPS, I_CYCLES, I_MISMATCH, I_TIME, I_STATUS = range(8)
+I_EXTENDED, I_EXTEND_SPEED, I_RETRACTED, I_RETRACT_SPEED = range(8, 12)
+N_INFO = 12
 
 # Status.
 DONE, STOPPED, TOO_MANY_STEPS, TOO_MANY_EVENTS = 0.0, 1.0, 2.0, 3.0
