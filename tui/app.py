@@ -45,6 +45,7 @@ class Design(App[int], inherit_bindings=False):
 
     CSS_PATH = Path(__file__).with_name("app.tcss")
     TITLE = "Pneumatic actuator design"
+    NOTIFICATION_TIMEOUT = 3
     BINDINGS: ClassVar[list[BindingType]] = list(actions.bindings())
 
     session: reactive[Session] = reactive(None, init=False)  # type: ignore[arg-type]

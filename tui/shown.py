@@ -7,6 +7,7 @@ from dataclasses import dataclass, replace
 from actuator.analysis import ActuatorResult, Criterion
 from actuator.answer import Answer
 from actuator.errors import Refusal
+from actuator.report.fields import field_values
 from actuator.report.figures import FIGURES, At, Figure, Level
 from actuator.report.shown import Shown, shown_for
 from actuator.report.verdicts import UPPER, kind_of_requirement, label_of_requirement
@@ -81,6 +82,17 @@ def _result(answer: Answer, machine: int, actuator: int) -> ActuatorResult | Non
         return None
     actuators = answer.analysis.machines[machine].actuators
     return actuators[actuator] if actuator < len(actuators) else None
+
+
+def in_effect(view: View) -> dict[str, str]:
+    """Values that hold for the fields of this actuator's sheet, typed or by default, by their paths."""
+    if view.answer.project is None or view.result is None:
+        return {}
+    found: dict[str, str] = {}
+    for path in ("site", "plant", "money", "machine", ""):
+        for field in field_values(view.answer, path, view.shown, machine=view.machine, actuator=view.actuator):
+            found[field.path] = field.value
+    return found
 
 
 def cylinder_sections(view: View) -> tuple[Section, ...]:
@@ -226,7 +238,7 @@ def _money(view: View) -> Section:
                 figures=tuple(item for row in made for item in row.figures),
             )
         )
-    return Section(title=MONEY, rows=tuple(rows), heads=("actuator", "machines", "all"))
+    return Section(title=MONEY, rows=tuple(rows), heads=("this", "machines", "all"))
 
 
 def _requirements(view: View) -> Section:
@@ -261,11 +273,13 @@ def criterion_figure(item: Criterion) -> Figure | None:
 
 
 def shown_criterion(item: Criterion, view: View) -> tuple[str, str]:
-    """Wanted and got with unit, ``("≤ 1.200 s", "0.614 s")``."""
+    """Wanted as typed, and got: ``("≤ 1.2 s", "0.6140 s")``."""
     kind = kind_of_requirement(item.name)
     sign = "≤" if item.name in UPPER else "≥"
     got = "–" if isinstance(item.got, Refusal) else view.shown.text(item.got, kind).replace("-", "−")
-    return f"{sign} {view.shown.text(item.wanted, kind)}", got
+    path = f"machine.{view.machine + 1}.actuator.{view.actuator + 1}.require.{item.name}"
+    wanted = view.answer.document.text(path) or view.shown.text(item.wanted, kind)
+    return f"{sign} {wanted}", got
 
 
 def _remarks(view: View) -> Section:

@@ -131,12 +131,13 @@ class Desk(Screen[None]):
 
     def show_view(self, answer: Answer, place: Place, system: System, pin: Answer | None, glyphs: Glyphs) -> None:
         """Show the figures of one actuator of an answer."""
-        from tui.shown import View
+        from tui.shown import View, in_effect
 
         machine, actuator = place.machine - 1, max(place.actuator, 1) - 1
         self._view = View(answer=answer, machine=machine, actuator=actuator, system=system, pin=pin)
         self._glyphs = glyphs
         self._fill()
+        self.query_one(Sheet).hint(in_effect(self._view))
         self.query_one(Verdict).show(self._view, glyphs == "ascii")
 
     def _fill(self) -> None:

@@ -61,6 +61,7 @@ class Field(Input):
     def __init__(self, spec: SheetField, text: str) -> None:
         super().__init__(text, select_on_focus=False)
         self.spec = spec
+        self._holds = ""
 
     def on_mount(self) -> None:
         """Lay out for the first time."""
@@ -69,6 +70,7 @@ class Field(Input):
     def address(self, spec: SheetField, text: str) -> None:
         """Stand for another path of the same shape, without being built anew."""
         self.spec = spec
+        self._holds = ""
         self.put(text)
         self._fit()
         self.refresh()
@@ -78,6 +80,12 @@ class Field(Input):
         if self.value != text:
             with self.prevent(Input.Changed):
                 self.value = text
+
+    def hint(self, value: str) -> None:
+        """Show in grey the value that holds while the field is left out."""
+        if value != self._holds:
+            self._holds = value
+            self._fit()
 
     def watch_label_width(self) -> None:
         """Move the text to the right of the label."""
@@ -100,7 +108,8 @@ class Field(Input):
         if self.styles.height is None or self.styles.height.value != height:
             self.styles.height = height
         room = max(self.outer_size.width - self.label_width - 4, 8)
-        hint = self.spec.default or ("left out" if not self.spec.example else f"e.g. {self.spec.example}")
+        otherwise = self.spec.default or (f"e.g. {self.spec.example}" if self.spec.example else "left out")
+        hint = self._holds or otherwise
         self.placeholder = hint if len(hint) <= room else hint[: room - 1] + "…"
 
     def _told(self) -> list[str]:

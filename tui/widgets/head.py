@@ -35,17 +35,17 @@ class Head(Widget):
         super().__init__(id=id)
         self._workspaces = workspaces
         self._current = ""
-        self._left = ""
+        self._left, self._mark = "", ""
         self._spans: list[tuple[int, int, str]] = []
 
     def show(self, session: Session) -> None:
         """Show which document this is."""
         path = session.document.path
         name = path.name if path else "not yet a file"
+        text = f" {title(session.document)} ({name})"
         mark = " * unsaved" if session.unsaved else ""
-        text = f" {title(session.document)} ({name}){mark}"
-        if text != self._left:
-            self._left = text
+        if (text, mark) != (self._left, self._mark):
+            self._left, self._mark = text, mark
             self.refresh()
 
     def choose(self, key: str) -> None:
@@ -61,8 +61,9 @@ class Head(Widget):
         ]
         taken = sum(len(text) for text, _ in tabs)
         room = max(self.size.width - taken - 1, 0)
-        left = self._left if len(self._left) <= room else self._left[: max(room - 1, 0)] + "…"
-        segments = [Segment(left.ljust(room + 1), plain + bold)]
+        rest = max(room - len(self._mark), 0)
+        left = self._left if len(self._left) <= rest else self._left[: max(rest - 1, 0)] + "…"
+        segments = [Segment((left + self._mark)[:room].ljust(room + 1), plain + bold)]
         self._spans, x = [], room + 1
         for text, key in tabs:
             style = plain + Style(reverse=True, bold=True) if key == self._current else plain

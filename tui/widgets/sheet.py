@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from typing import TYPE_CHECKING
 
 from textual import events
@@ -124,6 +124,11 @@ class Sheet(VerticalScroll, can_focus=False):
             field.problem = texts.get(path, "")
         self._alternates()
 
+    def hint(self, values: Mapping[str, str]) -> None:
+        """Show in grey, where a field is left out, the value that holds."""
+        for field in self.fields():
+            field.hint(values.get(field.spec.path, ""))
+
     def turn_every(self) -> bool:
         """Show all ways to state a value, or the usual ones; whether it is all."""
         self.every = not self.every
@@ -140,12 +145,12 @@ class Sheet(VerticalScroll, can_focus=False):
     def _alternates(self) -> None:
         """Hide other ways to state a value, unless one is used, or the usual one is missing."""
         usual = {field.spec.path: field for field in self.fields()}
-        for field in usual.values():
-            first = usual.get(field.spec.instead_of)
-            if first is not None:
-                missing = first.spec.required and not first.value
-                used = bool(field.value or field.problem or field.has_focus)
-                field.display = self.every or used or missing
+        others = [field for field in usual.values() if field.spec.instead_of in usual]
+        used = {field.spec.instead_of for field in others if field.value}
+        for field in others:
+            first = usual[field.spec.instead_of]
+            missing = first.spec.required and not first.value and field.spec.instead_of not in used
+            field.display = self.every or missing or bool(field.value or field.problem or field.has_focus)
 
 
 def _shape(path: str) -> str:
