@@ -96,6 +96,8 @@ OpposingForce = Annotated[float, Kind(dimension="force", unit="N", suffix="_N", 
 Viscous = Annotated[float, Kind(dimension="viscous", unit="N*s/m", suffix="_N_s_m", at_least=0.0)]
 Speed = Annotated[float, Kind(dimension="speed", unit="m/s", suffix="_m_s", at_least=0.0)]
 PositiveSpeed = Annotated[float, Kind(dimension="speed", unit="m/s", suffix="_m_s", above=0.0)]
+Frequency = Annotated[float, Kind(dimension="frequency", unit="Hz", suffix="_Hz", at_least=0.0)]
+Acceleration = Annotated[float, Kind(dimension="acceleration", unit="m/s**2", suffix="_m_s2", at_least=0.0)]
 Time = Annotated[float, Kind(dimension="time", unit="s", suffix="_s", at_least=0.0)]
 Period = Annotated[float, Kind(dimension="time", unit="s", suffix="_s", above=0.0)]
 Angle = Annotated[float, Kind(dimension="angle", unit="rad", suffix="_rad", at_least=-math.pi / 2, at_most=math.pi / 2)]
@@ -153,8 +155,8 @@ class FieldSpec:
         Allowed words of a choice; empty otherwise.
     part : type or None
         Class of a nested part, or of the items of a list of parts.
-    is_list, is_text, is_count, optional, required : bool
-        ``optional`` admits None; ``required`` has neither default nor rule.
+    is_list, is_text, is_count, is_flag, optional, required : bool
+        ``is_flag``: true or false; ``optional`` admits None; ``required`` has neither default nor rule.
     default : object
         The declared default; ``dataclasses.MISSING`` where there is none.
     """
@@ -168,6 +170,7 @@ class FieldSpec:
     is_list: bool
     is_text: bool
     is_count: bool
+    is_flag: bool = False
     optional: bool
     required: bool
     default: Any
@@ -213,6 +216,7 @@ def fields_of(part: type[Any]) -> tuple[FieldSpec, ...]:
                 is_list=is_list,
                 is_text=bare is str,
                 is_count=bare is int,
+                is_flag=bare is bool,
                 optional=optional,
                 required=default is dataclasses.MISSING and not (entry and entry.default),
                 default=default,

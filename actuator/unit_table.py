@@ -166,6 +166,16 @@ DIMENSIONS: dict[str, Dimension] = {
         us=("in/s", "ft/s"),
         example="20 mm/s",
     ),
+    "frequency": Dimension(
+        name="a frequency", forms={"Hz": "Hz", "kHz": "kHz"}, si=("Hz",), us=("Hz",), example="10 Hz"
+    ),
+    "acceleration": Dimension(
+        name="an acceleration",
+        forms={f"{way}/s2": f"{LENGTH[way]}/s**2" for way in ("mm", "m", "in", "ft")},
+        si=("m/s2",),
+        us=("ft/s2",),
+        example="20 m/s2",
+    ),
     "time": Dimension(
         name="a time", forms=TIME, si=("s", "ms", "min", "h"), us=("s", "ms", "min", "h"), example="1.2 s"
     ),

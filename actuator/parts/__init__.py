@@ -1,6 +1,7 @@
 """Frozen parts, checked when they are built: what a document describes, in SI."""
 
 from actuator.parts.actuator import Actuator, Require
+from actuator.parts.holding import Holding
 from actuator.parts.load import Friction, Load, ProcessForce
 from actuator.parts.project import Compressor, Machine, Money, Plant, Project, Site
 from actuator.parts.valve import Throttle, Valve
@@ -9,6 +10,7 @@ __all__ = [
     "Actuator",
     "Compressor",
     "Friction",
+    "Holding",
     "Load",
     "Machine",
     "Money",

@@ -22,6 +22,7 @@ from actuator.kinds import (
     Volume,
     check,
 )
+from actuator.parts.holding import Holding
 from actuator.parts.load import Friction, Load
 from actuator.parts.valve import Throttle, Valve
 
@@ -109,6 +110,19 @@ class Actuator:
             example="90 mm",
         ),
     ]
+    side_load: Annotated[
+        OpposingForce,
+        Entry("Side load", "Force across the rod at its end, besides the rod's own weight.", example="50 N"),
+    ] = 0.0
+    bearing_length: Annotated[
+        Length,
+        Entry(
+            "Bearing length",
+            "From the middle of the piston to the rod's gland, extended.",
+            default="half the bore, common practice, no source",
+            example="25 mm",
+        ),
+    ]
     return_pressure: Annotated[
         AbsPressure | None,
         Entry(
@@ -160,6 +174,9 @@ class Actuator:
     friction: Annotated[Friction, Entry("Friction", "Friction of the cylinder.")]
     valve: Annotated[Valve, Entry("Valve", "The directional valve.")]
     throttle: Annotated[Throttle, Entry("Throttle", "One-way flow controls.")] = field(default_factory=Throttle)
+    holding: Annotated[Holding, Entry("Holding", "What holds the load when supply or signal is lost.")] = field(
+        default_factory=Holding
+    )
     require: Annotated[Require, Entry("Requirements", "What the job asks.")] = field(default_factory=Require)
 
     def __post_init__(self) -> None:

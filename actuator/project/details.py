@@ -6,7 +6,7 @@ import math
 from typing import Any
 
 from actuator import kinds
-from actuator.parts import Actuator, Friction, Load, ProcessForce, Require, Throttle, Valve
+from actuator.parts import Actuator, Friction, Holding, Load, ProcessForce, Require, Throttle, Valve
 from actuator.project.fields import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
 from actuator.project.limits import beyond
 from actuator.project.paths import Steps
@@ -156,6 +156,16 @@ def throttle(walk: Walk, steps: Steps, here: Any) -> Throttle | None:
     if len(walk.problems) > before:
         return None
     made: Throttle | None = walk.built(Throttle, steps, values)
+    return made
+
+
+def holding(walk: Walk, steps: Steps, here: Any) -> Holding | None:
+    """What holds the load when air or signal is lost."""
+    before = len(walk.problems)
+    values = walk.table(Holding, steps, here)
+    if values is None or len(walk.problems) > before:
+        return None
+    made: Holding | None = walk.built(Holding, steps, values)
     return made
 
 

@@ -68,6 +68,8 @@ ALTERNATES = (
 )
 PROCESS_FORCE = '[{ from = "380 mm", to = "400 mm", force = "300 N" }]'
 """How the list of process forces is typed."""
+FLAG_WORDS = ("false", "true")
+"""How yes and no are typed; TOML takes them without quotes."""
 FAMILIES = ("supply", "exhaust")
 """Paths of a valve that have alternates: ``supply_c``, ``supply_cv``, ..."""
 

@@ -112,6 +112,7 @@ def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator 
         "friction": details.friction(walk, (*steps, "friction"), values.get("friction", {}), values, machine),
         "valve": details.valve(walk, (*steps, "valve"), values.get("valve", {})),
         "throttle": details.throttle(walk, (*steps, "throttle"), values.get("throttle")),
+        "holding": details.holding(walk, (*steps, "holding"), values.get("holding", {})),
         "require": details.require(walk, (*steps, "require"), values.get("require", {})),
     }
     if len(walk.problems) > before or not _follow(values, machine):
@@ -160,6 +161,7 @@ def _follow(values: Values, machine: Values) -> bool:
     values.setdefault("dead_volume_cap", 0.1 * bore * area)
     values.setdefault("dead_volume_rod", 0.1 * bore * (area - math.pi / 4.0 * rod**2))
     values.setdefault("retract_at", cycle / 2.0)
+    values.setdefault("bearing_length", 0.5 * bore)
     mounting = values.get("mounting", "front flange")
     if mounting in ("rear flange", "rear pin"):
         closed = stroke + 3.0 * bore

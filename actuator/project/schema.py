@@ -11,7 +11,7 @@ from typing import Any
 
 from actuator.kinds import FieldSpec, Kind
 from actuator.parts import Actuator, Compressor, Machine, Money, Project, Site, Valve
-from actuator.project.fields import ALTERNATES, FAMILIES, FORMAT, PROCESS_FORCE, ROOT, fields
+from actuator.project.fields import ALTERNATES, FAMILIES, FLAG_WORDS, FORMAT, PROCESS_FORCE, ROOT, fields
 from actuator.unit_table import DIMENSIONS
 
 
@@ -69,7 +69,7 @@ def _rows(part: Any, prefix: str, leave_out: tuple[str, ...] = ()) -> tuple[Shee
                 help=spec.entry.help,
                 default=default_text(spec),
                 example=PROCESS_FORCE if spec.is_list else spec.entry.example.strip('"'),
-                choices=spec.choices,
+                choices=FLAG_WORDS if spec.is_flag else spec.choices,
                 kind=spec.kind,
                 required=spec.required,
                 instead_of=f"{prefix}{family}_c" if alternate else "",
@@ -82,6 +82,8 @@ def default_text(spec: FieldSpec) -> str:
     """What holds where a field is left out, in words; empty where nothing does."""
     if spec.entry is not None and spec.entry.default:
         return spec.entry.default
+    if spec.is_flag:
+        return FLAG_WORDS[spec.default]
     if spec.kind is None or spec.required or not isinstance(spec.default, float):
         return ""
     unit = DIMENSIONS[spec.kind.dimension].si[0] if spec.default == 0.0 else spec.kind.unit.replace("1", "")
@@ -183,6 +185,8 @@ def _property(spec: FieldSpec) -> dict[str, Any]:
         return {**about, "type": "array", "items": _object(spec.part), **least, **most}
     if spec.part is not None:
         return {**about, **_object(spec.part)}
+    if spec.is_flag:
+        return {**about, "type": "boolean"}
     if spec.choices:
         return {**about, "enum": list(spec.choices)}
     if spec.kind is None:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from actuator.project.fields import PROCESS_FORCE
+from actuator.project.fields import FLAG_WORDS, PROCESS_FORCE
 from actuator.project.schema import SheetField, sheet
 from actuator.unit_table import DIMENSIONS, System
 from actuator.units import Reading, read, show
@@ -23,6 +23,7 @@ _HEADERS = {
     "Valve": "[machine.actuator.valve]",
     "Throttle": "[machine.actuator.throttle]",
     "Requirements": "[machine.actuator.require]",
+    "Holding": "[machine.actuator.holding]",
     "Compressor": "[[plant.compressor]]",
     "Money": "[money]",
 }
@@ -117,7 +118,11 @@ def _example(row: SheetField, system: System) -> str:
 
 def _toml(text: str, row: SheetField) -> str:
     """Bare where the field is a number or a list, else in quotes."""
-    bare = text.startswith("[") or (row.kind is not None and text.replace(".", "", 1).isdigit())
+    bare = (
+        text.startswith("[")
+        or row.choices == FLAG_WORDS
+        or (row.kind is not None and text.replace(".", "", 1).isdigit())
+    )
     return text if bare else f'"{text}"'
 
 

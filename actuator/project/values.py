@@ -7,7 +7,7 @@ import tomllib
 from typing import Any
 
 from actuator.errors import Problem
-from actuator.project.fields import find
+from actuator.project.fields import FLAG_WORDS, find
 from actuator.project.paths import Steps, join
 
 _PLAIN_NUMBER = re.compile(r"-?(?:0|[1-9][0-9]{0,14})(\.[0-9]+)?([eE][+-]?[0-9]{1,3})?")
@@ -85,6 +85,8 @@ def value_of(steps: Steps, text: str) -> Any:
     spec = find(steps)
     if spec is not None and (spec.is_text or spec.choices):
         return text
+    if spec is not None and spec.is_flag and text in FLAG_WORDS:
+        return text == "true"
     if _PLAIN_NUMBER.fullmatch(text) and text not in ("-0",):
         return int(text) if re.fullmatch(r"-?[0-9]+", text) else NumberText(text)
     if text.strip()[:1] in ("[", "{") and "\n" not in text.strip():

@@ -105,6 +105,11 @@ class Walk:
                 values[spec.name] = value
             else:
                 self.problem(steps, value, f'must be text in quotes, "{told(value)}"')
+        elif spec.is_flag:
+            if isinstance(value, bool):
+                values[spec.name] = value
+            else:
+                self.problem(steps, value, f"must be true or false, without quotes: {_form(spec)}")
         elif spec.choices:
             if value in spec.choices:
                 values[spec.name] = value
@@ -168,6 +173,8 @@ def _is_bare(spec: FieldSpec) -> bool:
 
 def _form(spec: FieldSpec) -> str:
     """How to write a field."""
+    if spec.is_flag:
+        return f"{spec.key} = true"
     if spec.choices:
         return _choice("", spec.choices)
     example = (spec.entry.example if spec.entry else "").strip('"')

@@ -9,7 +9,7 @@ from typing import Any
 from actuator.answer import Answer
 from actuator.kinds import FieldSpec, fields_of
 from actuator.parts import Project
-from actuator.project.fields import ALTERNATES, FAMILIES, assumption
+from actuator.project.fields import ALTERNATES, FAMILIES, FLAG_WORDS, assumption
 from actuator.project.schema import default_text
 from actuator.report.shown import Shown
 
@@ -92,7 +92,7 @@ def _value(value: Any, spec: FieldSpec, shown: Shown) -> str:
         return shown.absolute(float(value), spec.kind)
     if spec.kind is not None:
         return shown.text(float(value), spec.kind)
-    return str(value)
+    return FLAG_WORDS[value] if spec.is_flag else str(value)
 
 
 def field_values(

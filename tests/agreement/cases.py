@@ -71,6 +71,7 @@ def case(
         dead_volume_cap=small if dead_cap is None else dead_cap * 1e-6,
         dead_volume_rod=small if dead_rod is None else dead_rod * 1e-6,
         closed_length=bore * 1e-3,
+        bearing_length=0.5e-3 * bore,
         return_pressure=None if back is None else back * 1e5,
         extend_at=extend_at,
         retract_at=period / 2 if retract_at is None else retract_at,

@@ -131,6 +131,7 @@ def _cylinder(cut_off: float = 1.0, return_pressure: float | None = None) -> Act
         dead_volume_cap=2e-5,
         dead_volume_rod=3e-5,
         closed_length=0.05,
+        bearing_length=0.025,
         cut_off=cut_off,
         return_pressure=return_pressure,
         retract_at=2.0,

@@ -35,6 +35,8 @@ mounting = "front flange"                 # foot, rear flange, rear pin, front t
 rod_end = "fixed-guided"                  # hinged-guided, free
 closed_length = "90 mm"                   # mounting plane or pin to rod end, retracted
 return_pressure = "6 bar gauge"           # lower supply for the retract stroke, if regulated
+side_load = "0 N"                         # across the rod at its end
+bearing_length = "25 mm"                  # piston to gland, extended
 extend_at = "0 s"                         # valve commands within the machine's cycle
 retract_at = "2 s"
 wall_heat_transfer = "60 W/(m2*K)"        # or polytropic_index = 1.2
@@ -69,6 +71,11 @@ extend_c = "1.2 dm3/(s*bar)"              # acts while extending
 retract_c = "1.2 dm3/(s*bar)"
 b = 0.3
 free_c = "3 dm3/(s*bar)"                  # through the check valve
+
+[machine.actuator.holding]
+supply_check = false
+pilot_check = false
+rod_lock = "0 N"
 
 [machine.actuator.require]                # what the job asks; left out = not judged
 stroke_time = "1.2 s"                     # each way, command to end

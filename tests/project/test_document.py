@@ -50,6 +50,14 @@ def test_numbers_stay_as_typed() -> None:
     assert sample().text("machine.quantity") == "1"
 
 
+def test_yes_and_no_stand_without_quotes() -> None:
+    path = "machine.actuator.holding.supply_check"
+    edited = sample().edited(path, "true")
+    assert edited.to_toml() == SAMPLE.replace("supply_check = false", "supply_check = true")
+    assert edited.text(path) == parse(edited.to_toml()).text(path) == "true"
+    assert sample().text(path) == "false"
+
+
 def test_a_missing_table_is_made_where_people_would_write_it() -> None:
     edited = short().edited("machine.actuator.2.throttle.kind", "meter-out").to_toml()
     added = edited.removeprefix(SHORT)

@@ -9,6 +9,7 @@ import pytest
 from actuator.parts import (
     Actuator,
     Friction,
+    Holding,
     Load,
     Machine,
     ProcessForce,
@@ -55,6 +56,7 @@ def test_the_example_of_the_design_in_si() -> None:
                         mounting="front flange",
                         rod_end="fixed-guided",
                         closed_length=0.09,
+                        bearing_length=0.025,
                         return_pressure=701_300.0,
                         extend_at=0.0,
                         retract_at=2.0,
@@ -74,6 +76,7 @@ def test_the_example_of_the_design_in_si() -> None:
                             opening_time=0.005,
                         ),
                         throttle=Throttle(kind="meter-out", extend_c=1.2e-8, retract_c=1.2e-8, b=0.3, free_c=3e-8),
+                        holding=Holding(rod_lock=0.0),
                         require=Require(stroke_time=1.2, force_reserve=0.3, buckling_safety=4.0, force_at_end=0.0),
                     ),
                 ),
@@ -95,6 +98,8 @@ def test_what_is_left_out_follows_the_stated_rules() -> None:
     assert pusher.friction.stribeck_speed == 0.02
     assert (pusher.extend_at, pusher.retract_at, lift.retract_at) == (0.0, 2.0, 3.0)
     assert pusher.closed_length == 0.05
+    assert pusher.bearing_length == 0.025
+    assert pusher.holding == Holding()
     assert pusher.throttle.kind == "none"
     assert (pusher.valve.exhaust_c, pusher.valve.exhaust_b) == (2e-8, 0.3)
     assert pusher.require == Require()
