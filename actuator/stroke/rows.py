@@ -189,6 +189,9 @@ def gather(cases: Sequence[Case], *, compiled: bool, way: float = 0.0, history: 
     def row(numbers: Sequence[Any]) -> Any:
         return np.array(numbers, dtype=np.float64) if compiled else numbers
 
+    def empty(count: int) -> Any:
+        return np.zeros(count) if compiled else [0.0] * count
+
     processes = [process_rows(actuator) for actuator, *_ in cases]
     most = max(len(edges) for edges, _ in processes)
     columns: list[list[list[float]]] = [[] for _ in range(6)]
@@ -212,7 +215,7 @@ def gather(cases: Sequence[Case], *, compiled: bool, way: float = 0.0, history: 
         forces=force_rows,
         info=row([[0.0] * at.N_INFO for _ in cases]),
         before=row([[0.0] * at.N_STATE for _ in cases]),
-        history=row([0.0] * (MOST_HISTORY * at.HISTORY_WIDTH if history else 0)),
-        events=row([0.0] * (at.MAX_EVENTS * at.EVENT_WIDTH)),
-        work=row([0.0] * at.N_WORK),
+        history=empty(MOST_HISTORY * at.HISTORY_WIDTH if history else 0),
+        events=empty(at.MAX_EVENTS * at.EVENT_WIDTH),
+        work=empty(at.N_WORK),
     )
