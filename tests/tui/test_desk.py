@@ -459,6 +459,17 @@ async def test_other_ways_to_state_a_conductance_appear_when_they_are_needed() -
         assert field(app, valve + "exhaust_kv").display
 
 
+async def test_a_field_left_out_shows_the_value_that_holds() -> None:
+    app = Quick(one())
+    async with app.run_test(size=(120, 36)) as pilot:
+        await settled(app, pilot)
+        assert field(app, BORE.replace("bore", "kind")).placeholder == "double-acting"
+        assert field(app, BORE.replace("bore", "closed_length")).placeholder == "50.00 mm"  # the bore
+        assert field(app, BORE.replace("bore", "return_pressure")).placeholder == "e.g. 4 bar gauge"
+        assert shows(app, "50.00 mm")
+        assert app.session.text(BORE.replace("bore", "closed_length")) == ""
+
+
 async def test_a_key_in_a_window_is_no_edit() -> None:
     app = Quick(one())
     async with app.run_test(size=(100, 30)) as pilot:

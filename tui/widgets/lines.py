@@ -156,8 +156,9 @@ def _row_lines(row: Row, shape: _Shape, width: int, plain: bool) -> list[Line]:
     elif row.share is not None and barred >= BAR_LEAST:
         drawn = bar(row.share, barred, plain) + " "
         lines.append(Line(((" " + row.label.ljust(shape.label + 1), BODY), (drawn, BAR), (numbers, NUMBER)), row.name))
-    elif len(row.label) <= room:
-        lines.append(Line(((" " + row.label.ljust(room), BODY), (numbers, NUMBER)), row.name))
+    elif len(row.label) + 2 + len(numbers.lstrip()) <= width:  # a long label may use the numbers' left margin
+        label = " " + row.label.ljust(room)
+        lines.append(Line(((label, BODY), (numbers[len(label) + len(numbers) - width :], NUMBER)), row.name))
     else:
         lines.append(Line(((_fit(" " + row.label, width), BODY),), row.name))
         lines.append(Line(((numbers.rjust(width)[-width:], NUMBER),), row.name))
@@ -167,8 +168,9 @@ def _row_lines(row: Row, shape: _Shape, width: int, plain: bool) -> list[Line]:
         text = shape.numbers(row.changes, row.unit)
         lines.append(Line((("   from the pin".ljust(width)[: width - len(text)] + text, CHANGE),), row.name))
     for reason in row.reasons:
-        parts = wrap(reason, max(width - 4, 10))
-        lines += [Line(((_fit("   " + part, width), NOTE),), row.name) for part in parts]
+        begin = "   " if row.label else " - "
+        parts = wrap(reason, max(width, 12), initial_indent=begin, subsequent_indent="   ")
+        lines += [Line(((_fit(part, width), NOTE),), row.name) for part in parts]
     return lines
 
 
