@@ -14,14 +14,27 @@ from actuator.stroke.histories import Histories, fill_in, half_stroke
 from actuator.stroke.result import Array, Balances, Ledger, StrokeResult
 
 
+def spring_energy(x: float, par: Array) -> float:
+    """Energy of the spring against its place at the retracted end. [J]"""
+    return float(-par[at.SPRING_FORCE] * x - 0.5 * par[at.SPRING_RATE] * x * x)
+
+
 def stored(y: Array, par: Array) -> float:
-    """Exergy of both chambers against the ambient, and kinetic and lift energy. [J]"""
+    """Exergy of both chambers against the ambient, and kinetic, lift and spring energy. [J]"""
     p0, t0 = par[at.P_AMB], par[at.T_AMB]
     total = 0.5 * par[at.MASS] * y[at.V] ** 2 + par[at.WEIGHT] * y[at.X]
-    for m, u, volume in (
-        (y[at.M_CAP], y[at.U_CAP], par[at.DEAD_CAP] + par[at.AREA_CAP] * y[at.X]),
-        (y[at.M_ROD], y[at.U_ROD], par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - y[at.X])),
+    total += spring_energy(y[at.X], par)
+    for m, u, volume, vented in (
+        (y[at.M_CAP], y[at.U_CAP], par[at.DEAD_CAP] + par[at.AREA_CAP] * y[at.X], par[at.VENTED_CAP]),
+        (
+            y[at.M_ROD],
+            y[at.U_ROD],
+            par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - y[at.X]),
+            par[at.VENTED_ROD],
+        ),
     ):
+        if vented:
+            continue
         temp, p = u / (m * CV), (GAMMA - 1.0) * u / volume
         total += (
             m * (CV * (temp - t0) - t0 * (CP * math.log(temp / t0) - R_AIR * math.log(p / p0)) - R_AIR * t0)
@@ -76,7 +89,12 @@ def make_balances(start: Array, end: Array, par: Array) -> Balances:
         heat=pair(at.Q_WALL_CAP),
         energy_change=(float(end[at.U_CAP] - start[at.U_CAP]), float(end[at.U_ROD] - start[at.U_ROD])),
         piston_work=float(end[at.Q_PISTON]),
-        mechanical_change=float(kinetic + par[at.WEIGHT] * (end[at.X] - start[at.X])),
+        mechanical_change=float(
+            kinetic
+            + par[at.WEIGHT] * (end[at.X] - start[at.X])
+            + spring_energy(end[at.X], par)
+            - spring_energy(start[at.X], par)
+        ),
         entropy_produced=float(end[at.Q_ENTROPY]),
         exhaust_side=float(end[at.Q_X_SIDE]),
         drawn=float(end[at.Q_DRAWN]),

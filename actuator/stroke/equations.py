@@ -128,9 +128,16 @@ def chamber(
     return Chamber(p, temp, inflow, outflow, power, heat)
 
 
+def vented(growth: float, par: Row) -> Chamber:
+    """A side that is open to the atmosphere, as on the spring of a single-acting cylinder."""
+    return Chamber(par[at.P_AMB], par[at.T_AMB], 0.0, 0.0, par[at.P_AMB] * growth, 0.0)
+
+
 def cap_chamber(time: float, y: State, mode: Row, par: Row) -> Chamber:
     """:func:`chamber` of the cap side."""
     x, area, dead = y[at.X], par[at.AREA_CAP], par[at.DEAD_CAP]
+    if par[at.VENTED_CAP] > 0.5:
+        return vented(area * y[at.V], par)
     wall = math.pi * par[at.BORE] * x + 2.0 * area
     part = opening(time, mode)
     return chamber(
@@ -141,6 +148,8 @@ def cap_chamber(time: float, y: State, mode: Row, par: Row) -> Chamber:
 def rod_chamber(time: float, y: State, mode: Row, par: Row) -> Chamber:
     """:func:`chamber` of the rod side."""
     x, area, dead = par[at.STROKE] - y[at.X], par[at.AREA_ROD], par[at.DEAD_ROD]
+    if par[at.VENTED_ROD] > 0.5:
+        return vented(-area * y[at.V], par)
     wall = math.pi * par[at.BORE] * x + 2.0 * area
     part = opening(time, mode)
     return chamber(
@@ -160,14 +169,17 @@ def rubbing(v: float, mode: Row, par: Row) -> float:
     )
 
 
-def push(p1: float, p2: float, par: Row) -> float:
-    """Force of both pressures, D = p1·A1 - p2·A2 - p0·(A1 - A2) - M·g·sin α + F, positive extending. [N]"""
+def push(p1: float, p2: float, x: float, par: Row) -> float:
+    """Drive D = p1·A1 - p2·A2 - p0·(A1 - A2) - M·g·sin α + F_const + F_spring(x), positive extending. [N]"""
     area1, area2 = par[at.AREA_CAP], par[at.AREA_ROD]
-    return p1 * area1 - p2 * area2 - par[at.P_AMB] * (area1 - area2) - par[at.WEIGHT] + par[at.CONSTANT]
+    pressures = p1 * area1 - p2 * area2 - par[at.P_AMB] * (area1 - area2)
+    return pressures - par[at.WEIGHT] + par[at.CONSTANT] + par[at.SPRING_FORCE] + par[at.SPRING_RATE] * x
 
 
-def stored_rate(air: Chamber, port_temp: float) -> float:
+def stored_rate(air: Chamber, port_temp: float, open_side: float) -> float:
     """Rate of a chamber's internal energy: dU/dt = q_in·cp·T_in - q_out·cp·T - p·dV/dt + Q̇. [W]"""
+    if open_side > 0.5:
+        return 0.0
     return CP * (air.inflow * port_temp - air.outflow * air.temp) - air.power + air.heat
 
 
@@ -183,14 +195,14 @@ def rates(time: float, y: State, mode: Row, par: Row) -> State:
     acceleration = 0.0
     if direction != 0.0:
         against = opposing(mode, par) + rubbing(y[at.V], mode, par)
-        acceleration = (push(cap.p, rod.p, par) - direction * against) / par[at.MASS]
+        acceleration = (push(cap.p, rod.p, y[at.X], par) - direction * against) / par[at.MASS]
     return (
         y[at.V],
         acceleration,
         cap.inflow - cap.outflow,
-        stored_rate(cap, mode[at.CAP_LINK + at.PORT_T]),
+        stored_rate(cap, mode[at.CAP_LINK + at.PORT_T], par[at.VENTED_CAP]),
         rod.inflow - rod.outflow,
-        stored_rate(rod, mode[at.ROD_LINK + at.PORT_T]),
+        stored_rate(rod, mode[at.ROD_LINK + at.PORT_T], par[at.VENTED_ROD]),
     )
 
 
@@ -198,7 +210,9 @@ def drive(y: State, par: Row) -> float:
     """Force D on the piston at rest, positive extending. [N]"""
     vol1 = par[at.DEAD_CAP] + par[at.AREA_CAP] * y[at.X]
     vol2 = par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - y[at.X])
-    return push(_GAMMA_1 * y[at.U_CAP] / vol1, _GAMMA_1 * y[at.U_ROD] / vol2, par)
+    p1 = par[at.P_AMB] if par[at.VENTED_CAP] > 0.5 else _GAMMA_1 * y[at.U_CAP] / vol1
+    p2 = par[at.P_AMB] if par[at.VENTED_ROD] > 0.5 else _GAMMA_1 * y[at.U_ROD] / vol2
+    return push(p1, p2, y[at.X], par)
 
 
 def excess(y: State, mode: Row, par: Row) -> float:

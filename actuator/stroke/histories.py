@@ -34,10 +34,10 @@ class Histories:
 
 
 def _cubic(left: Array, right: Array, rate_left: Array, rate_right: Array, h: Array) -> tuple[Array, Array]:
-    """Values and rates, shape (steps, 3), of the cubics through both ends of each step."""
-    z = _BETWEEN[None, :]
-    a, b, h = left[:, None], right[:, None], h[:, None]
-    ra, rb = rate_left[:, None] * h, rate_right[:, None] * h
+    """Values and rates of the cubics through both ends of each step; one axis more, of length 3, than the ends."""
+    z = _BETWEEN
+    a, b, h = left[..., None], right[..., None], h[..., None]
+    ra, rb = rate_left[..., None] * h, rate_right[..., None] * h
     value = (1 + 2 * z) * (1 - z) ** 2 * a + z * (1 - z) ** 2 * ra + z**2 * (3 - 2 * z) * b + z**2 * (z - 1) * rb
     rate = (6 * z * (1 - z) * (b - a) + (1 - z) * (1 - 3 * z) * ra + z * (3 * z - 2) * rb) / h
     return value, rate
@@ -65,29 +65,29 @@ def fill_in(rows: Array, par: Array) -> Histories:
     order = np.argsort(keys, kind="stable")
 
     def merged(nodes: Array, between: Array) -> Array:
-        out: Array = np.concatenate([nodes, between.ravel()])[order]
+        """Values at the ends of the steps and between them, by time along the last axis."""
+        flat = between.reshape(*nodes.shape[:-1], -1)
+        out: Array = np.concatenate([nodes, flat], axis=-1)[..., order]
         return out
 
-    states = []
-    state_rates = []
-    for i in range(at.N_STATE):
-        values, slopes = rows[:, at.H_STATE + i], rows[:, at.H_RATE + i]
-        mid, mid_rate = _cubic(values[steps], values[steps + 1], slopes[steps], slopes[steps + 1], h[steps])
-        states.append(merged(values, mid))
-        state_rates.append(merged(slopes, mid_rate))
-    x, v, m_cap, u_cap, m_rod, u_rod = states
+    columns = rows.T
+    values = columns[at.H_STATE : at.H_STATE + at.N_STATE]
+    slopes = columns[at.H_RATE : at.H_RATE + at.N_STATE]
+    mid, mid_rate = _cubic(values[:, steps], values[:, steps + 1], slopes[:, steps], slopes[:, steps + 1], h[steps])
+    x, v, m_cap, u_cap, m_rod, u_rod = merged(values, mid)
+    flow_cap, flow_rod = merged(slopes[[at.M_CAP, at.M_ROD]], mid_rate[[at.M_CAP, at.M_ROD]])
     vol_cap = par[at.DEAD_CAP] + par[at.AREA_CAP] * x
     vol_rod = par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - x)
+    p0, t0 = par[at.P_AMB], par[at.T_AMB]
     cap_on_supply = merged(side, np.repeat(side[steps], len(_BETWEEN))) > 0.0
-    flow_cap, flow_rod = state_rates[at.M_CAP], state_rates[at.M_ROD]
     found = {
         "time": merged(time, time[steps, None] + _BETWEEN[None, :] * h[steps, None]),
         "position": x,
         "speed": v,
-        "p_cap": (GAMMA - 1.0) * u_cap / vol_cap,
-        "p_rod": (GAMMA - 1.0) * u_rod / vol_rod,
-        "temp_cap": u_cap / (m_cap * CV),
-        "temp_rod": u_rod / (m_rod * CV),
+        "p_cap": np.full_like(x, p0) if par[at.VENTED_CAP] else (GAMMA - 1.0) * u_cap / vol_cap,
+        "p_rod": np.full_like(x, p0) if par[at.VENTED_ROD] else (GAMMA - 1.0) * u_rod / vol_rod,
+        "temp_cap": np.full_like(x, t0) if par[at.VENTED_CAP] else u_cap / (m_cap * CV),
+        "temp_rod": np.full_like(x, t0) if par[at.VENTED_ROD] else u_rod / (m_rod * CV),
         "volume_cap": vol_cap,
         "volume_rod": vol_rod,
         "flow_supply": np.where(cap_on_supply, flow_cap, flow_rod),
@@ -230,6 +230,8 @@ def _standing_force(
         - ambient * (par[at.AREA_CAP] - par[at.AREA_ROD])
         - par[at.WEIGHT]
         + par[at.CONSTANT]
+        + par[at.SPRING_FORCE]
+        + par[at.SPRING_RATE] * past.position
     )[order]
     force = sign * push - actuator.friction.coulomb
     standing = (clock >= arrived - 1e-12) & (clock <= ends + 1e-12)

@@ -74,10 +74,16 @@ N_LOSS = Q_PISTON + 1 - N_STATE
     OPENING,
     CUT_EXTEND,
     CUT_RETRACT,
+    SPRING_FORCE,
+    SPRING_RATE,
+    VENTED_CAP,
+    VENTED_ROD,
     LEDGER_SCALE,
     CAP_FILL,
-) = range(29)
+) = range(33)
 """WEIGHT = M·g·sin α, GUIDE = μ·M·g·cos α; INDEX 0 = use HEAT; CUT_* positions [m], beyond the end = none;
+SPRING_FORCE at the retracted end, positive extending, and its slope over the position [N, N/m]; VENTED_* 1 = this
+side is open to the atmosphere, without pressure, flow and balance of its own;
 LEDGER_SCALE = exergy of the air of a cycle, against which the step error of the ledger counts [J]."""
 PATHS = ("cap fill", "cap back", "cap exhaust", "cap suck", "rod fill", "rod back", "rod exhaust", "rod suck")
 """From CAP_FILL on, three numbers (C, b, m) for each of these paths."""

@@ -94,7 +94,7 @@ class Balances:
     piston_work: float
     """Integral of (p1·A1 - p2·A2 - p0·A_rod)·v. [J]"""
     mechanical_change: float
-    """Kinetic and lift energy at the end less at the start. [J]"""
+    """Kinetic, lift and spring energy at the end less at the start. [J]"""
     entropy_produced: float
     """Entropy leaving less entering, over the boundary supply port to atmosphere and walls. [J/K]"""
     exhaust_side: float

@@ -111,9 +111,17 @@ def tangent(
     return Tangent(m, u, volume, growth, wall, part, p, temp, inflow, outflow, inflow_p, outflow_p, port_temp)
 
 
+def vented_tangent(growth: float, par: Row) -> Tangent:
+    """A side that is open to the atmosphere: a chamber without bounds, which nothing changes."""
+    far = math.inf
+    return Tangent(far, far, far, growth, 0.0, 0.0, par[at.P_AMB], par[at.T_AMB], 0.0, 0.0, 0.0, 0.0, par[at.T_AMB])
+
+
 def cap_tangent(time: float, y: State, mode: Row, par: Row) -> Tangent:
     """:func:`tangent` of the cap side."""
     x, v, area = y[at.X], y[at.V], par[at.AREA_CAP]
+    if par[at.VENTED_CAP] > 0.5:
+        return vented_tangent(area * v, par)
     wall = math.pi * par[at.BORE] * x + 2.0 * area
     volume = par[at.DEAD_CAP] + area * x
     return tangent(y[at.M_CAP], y[at.U_CAP], volume, area * v, wall, opening(time, mode), at.CAP_LINK, mode)
@@ -122,6 +130,8 @@ def cap_tangent(time: float, y: State, mode: Row, par: Row) -> Tangent:
 def rod_tangent(time: float, y: State, mode: Row, par: Row) -> Tangent:
     """:func:`tangent` of the rod side."""
     x, v, area = par[at.STROKE] - y[at.X], y[at.V], par[at.AREA_ROD]
+    if par[at.VENTED_ROD] > 0.5:
+        return vented_tangent(-area * v, par)
     wall = math.pi * par[at.BORE] * x + 2.0 * area
     volume = par[at.DEAD_ROD] + area * x
     return tangent(y[at.M_ROD], y[at.U_ROD], volume, -area * v, wall, opening(time, mode), at.ROD_LINK, mode)
@@ -146,7 +156,9 @@ def chamber_change(
     dinflow = air.part * air.inflow_p * dp + air.inflow * dpart
     doutflow = air.part * (air.outflow_p * dp - 0.5 * air.outflow * dtemp / air.temp) + air.outflow * dpart
     dpower = dp * air.growth + air.p * area * dv
-    if par[at.INDEX] == 0.0:
+    if air.volume == math.inf:
+        dheat = 0.0
+    elif par[at.INDEX] == 0.0:
         dheat = par[at.HEAT] * (dwall * (par[at.T_AMB] - air.temp) - air.wall * dtemp)
     else:
         leaving = air.temp * doutflow + air.part * air.outflow * dtemp
@@ -162,6 +174,8 @@ def energy_change(air: Tangent, change: Chamber) -> float:
 
 def block(air: Tangent, area: float, par: Row) -> Block:
     """Columns of a chamber's rates, each the change in one direction."""
+    if air.volume == math.inf:
+        return Block(0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0)
     by_x = chamber_change(air, area, 1.0, 0.0, 0.0, 0.0, 0.0, par)
     by_v = chamber_change(air, area, 0.0, 1.0, 0.0, 0.0, 0.0, par)
     by_m = chamber_change(air, area, 0.0, 0.0, 1.0, 0.0, 0.0, par)
@@ -187,7 +201,7 @@ def jacobian(cap: Tangent, rod: Tangent, y: State, mode: Row, par: Row) -> Jacob
         return Jacobian(0.0, 0.0, 0.0, 0.0, cap_block, rod_block)
     rubbing = running_slope(direction * y[at.V], par[at.BREAKAWAY], par[at.COULOMB], par[at.VISCOUS], par[at.STRIBECK])
     mass = par[at.MASS]
-    by_x = -(cap.p * area1 * area1 / cap.volume + rod.p * area2 * area2 / rod.volume) / mass
+    by_x = -(cap.p * area1 * area1 / cap.volume + rod.p * area2 * area2 / rod.volume - par[at.SPRING_RATE]) / mass
     by_u1 = cap.p / cap.u * area1 / mass
     by_u2 = -rod.p / rod.u * area2 / mass
     return Jacobian(by_x, -rubbing / mass, by_u1, by_u2, cap_block, rod_block)
