@@ -25,6 +25,7 @@ from actuator.mechanics.force import (
     theoretical_extend,
     theoretical_retract,
 )
+from actuator.mechanics.sag import extended_rod
 from actuator.parts import Actuator, Machine, Project, Site
 from actuator.results import (
     ActuatorResult,
@@ -113,7 +114,7 @@ def static_forces(actuator: Actuator, machine: Machine, site: Site) -> Static:
 
 
 def rod_column(actuator: Actuator, static: Static) -> Rod:
-    """Buckling of the extended rod under the largest push, (p_s - p0)·A_cap."""
+    """The extended rod as a column under the largest push, (p_s - p0)·A_cap, and as a beam."""
     factor = end_factor(actuator.mounting, actuator.rod_end)
     longest = longest_stroke(
         rod=actuator.rod,
@@ -124,8 +125,27 @@ def rod_column(actuator: Actuator, static: Static) -> Rod:
         push=static.theoretical_extend,
         safety=actuator.require.buckling_safety or BUCKLING_SAFETY,
     )
+    beam = extended_rod(
+        rod=actuator.rod,
+        bore=actuator.bore,
+        stroke=actuator.stroke,
+        mounting=actuator.mounting,
+        closed_length=actuator.closed_length,
+        bearing_length=actuator.bearing_length,
+        inclination=actuator.load.inclination,
+        side_load=actuator.side_load,
+    )
     if isinstance(factor, Refusal):
-        return Rod(buckling_load=factor, buckling_safety=factor, slenderness=factor, rule="", longest_stroke=longest)
+        return Rod(
+            buckling_load=factor,
+            buckling_safety=factor,
+            slenderness=factor,
+            rule="",
+            longest_stroke=longest,
+            overhang=beam.overhang,
+            sag=beam.sag,
+            bearing_load=beam.bearing_load,
+        )
     found = column(actuator.rod, factor * (actuator.closed_length + actuator.stroke))
     return Rod(
         buckling_load=found.load,
@@ -133,6 +153,9 @@ def rod_column(actuator: Actuator, static: Static) -> Rod:
         slenderness=found.slenderness,
         rule=found.rule,
         longest_stroke=longest,
+        overhang=beam.overhang,
+        sag=beam.sag,
+        bearing_load=beam.bearing_load,
     )
 
 

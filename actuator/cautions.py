@@ -8,12 +8,17 @@ from dataclasses import dataclass
 
 from actuator.air.gas import GAMMA, GRAVITY
 from actuator.errors import Refusal
+from actuator.mechanics.sag import extended_rod
 from actuator.parts import Actuator, Machine, Site
 from actuator.sources import ISO_4414, OSHA_1910, OWN, PCC_2, PRACTICE, Source
 from actuator.stroke.result import HalfStroke, StrokeResult
 
 STICK_SLIP_SPEED = 0.05
 """Mean speed below which stick-slip is likely: common practice, no source. [m/s]"""
+LARGE_SAG = 1.0 / 500.0
+"""Sag over overhang from which it is told: own choice, no source. [1]"""
+LARGE_BEARING_LOAD = 0.2
+"""Load on the gland over the theoretical push from which it is told: own choice, no source. [1]"""
 BLOW_OFF_GAUGE = 30.0 * 6894.757293168361
 """30 psi, limit for cleaning with compressed air in 29 CFR 1910.242(b), gauge. [Pa]"""
 
@@ -196,6 +201,37 @@ def _noise_and_blow_off(machine: Machine, site: Site) -> Iterator[Caution]:
         )
 
 
+def _side_load(actuator: Actuator, machine: Machine, site: Site) -> Iterator[Caution]:
+    """A rod that bends, or leans on its gland."""
+    beam = extended_rod(
+        rod=actuator.rod,
+        bore=actuator.bore,
+        stroke=actuator.stroke,
+        mounting=actuator.mounting,
+        closed_length=actuator.closed_length,
+        bearing_length=actuator.bearing_length,
+        inclination=actuator.load.inclination,
+        side_load=actuator.side_load,
+    )
+    if beam.sag > LARGE_SAG * beam.overhang:
+        yield _caution(
+            "rod.sag",
+            f"Extended, the rod's end sags by {beam.sag * 1e3:.3g} mm over {beam.overhang * 1e3:.4g} mm, more than "
+            "1/500. It does not meet its mark, lowers what the rod carries against buckling, and wears one side "
+            "of gland and seals: guide the rod's end, or take a thicker rod.",
+            PRACTICE,
+        )
+    push = (machine.supply_pressure - site.ambient_pressure) * actuator.area_cap
+    if beam.bearing_load > LARGE_BEARING_LOAD * push:
+        yield _caution(
+            "rod.bearing_load",
+            f"Extended, the gland carries {beam.bearing_load:.4g} N across the rod, more than a fifth of the "
+            "cylinder's push. The friction and life reckoned with here do not cover that: carry the load on a "
+            "guide of its own, or compare with the side load that the maker allows at this stroke.",
+            PRACTICE,
+        )
+
+
 def _motion(stroke: StrokeResult | Refusal) -> Iterator[Caution]:
     """Slow strokes, and strokes that do not finish."""
     if isinstance(stroke, Refusal):
@@ -240,6 +276,7 @@ def cautions(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeRes
         *_loss(actuator),
         *_first_stroke(actuator, stroke),
         *_impact(actuator, machine, site, stroke),
+        *_side_load(actuator, machine, site),
         *_motion(stroke),
         *_stored(actuator, machine, site),
         *_noise_and_blow_off(machine, site),

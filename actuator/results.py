@@ -48,6 +48,12 @@ class Rod:
     """``"Euler"`` or ``"Johnson"``."""
     longest_stroke: float | Refusal
     """Longest stroke that keeps the wanted safety (4 where none is asked). [m]"""
+    overhang: float
+    """Gland to rod end, extended. [m]"""
+    sag: float
+    """Sag of the rod's end under its own weight and the side load, as if nothing guided it. [m]"""
+    bearing_load: float
+    """What the gland carries under the same, with the piston as the other bearing. [N]"""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -209,6 +209,12 @@ SULLIVAN = Source(
     how="excerpt",
 )
 GERE = Source(key="gere", title="Gere, Mechanics of Materials", place="example 11.1, p. 763", how="excerpt")
+BANSAL = Source(
+    key="bansal",
+    title="Bansal, A Textbook of Strength of Materials",
+    place="problems 13.1 and 13.3: cantilever with a load at its end, and with a load all along",
+    how="excerpt",
+)
 SHIGLEY = Source(
     key="shigley",
     title="Shigley, Mischke, Budynas, Mechanical Engineering Design",
@@ -233,6 +239,12 @@ ORIFICE_TABLE = Source(
     key="orifice_table",
     title="Handbook table: discharge of air through an orifice, cubic feet of free air a minute",
     place="coefficient 1; 15 to 125 psi gauge, 1/64 to 1 inch",
+    how="seen",
+)
+BEAM_TABLE = Source(
+    key="beam_table",
+    title="Published tables of beam formulas: beam over two supports, load on its overhanging end",
+    place="reactions",
     how="seen",
 )
 NOMOGRAM = Source(
@@ -281,10 +293,12 @@ _ALL = (
     ESPOSITO,
     SULLIVAN,
     GERE,
+    BANSAL,
     SHIGLEY,
     ASHRAE,
     ARMSTRONG,
     ORIFICE_TABLE,
+    BEAM_TABLE,
     NOMOGRAM,
     AIR_POWER,
     NAVAL_DECAY,

@@ -37,6 +37,7 @@ _SPELLED = str.maketrans(
         "ᵢ": "i",
         "α": "alpha",
         "γ": "gamma",
+        "δ": "delta",
         "ε": "epsilon",
         "η": "eta",
         "θ": "theta",
@@ -49,6 +50,7 @@ _SPELLED = str.maketrans(
         "σ": "sigma",
         "φ": "phi",
         "ψ": "psi",
+        "ω": "omega",
     }
 )
 """Signs of the formulas in ASCII."""

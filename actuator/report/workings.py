@@ -106,7 +106,7 @@ def _remarks(figure: Figure, at: At) -> Iterator[str]:
         yield result.air.difference
     if figure.group.startswith("Ideal indicator"):
         yield from result.indicator.remarks
-    if figure.group == "Rod" and result.rod.rule:
+    if figure.group == "Rod" and "shigley" in figure.sources and result.rod.rule:
         yield f"Rule used: {result.rod.rule}."
     if figure.simulated and not isinstance(result.stroke, Refusal):
         yield from result.stroke.remarks

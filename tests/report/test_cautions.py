@@ -83,6 +83,15 @@ def test_end_energy_and_slow_strokes_come_from_the_simulation() -> None:
     assert "sent back before it arrives" in told(stroke=stopped)["extend.position_reached"].text
 
 
+def test_a_rod_that_sags_or_leans_on_its_gland_is_told() -> None:
+    actuator = project().machines[0].actuators[0]
+    assert not {"rod.sag", "rod.bearing_load"} & set(told(actuator))
+    # 1000 N at 0.45 m of a 20 mm rod: F·L³/(3·E·I) = 18.4 mm, and 1000·(450 + 25)/25 = 19 kN on the gland, by hand
+    loaded = told(replace(actuator, side_load=1000.0))
+    assert "sags by 18.5 mm over 450 mm" in loaded["rod.sag"].text
+    assert "carries 1.911e+04 N across the rod" in loaded["rod.bearing_load"].text
+
+
 def test_first_stroke_after_venting_is_told_with_the_energy_to_compare() -> None:
     stroke = stroke_result(iter(np.arange(1.0, 200.0)))
     stroke = replace(stroke, extend=replace(stroke.extend, end_energy=13.9))
