@@ -104,6 +104,10 @@ Angle = Annotated[float, Kind(dimension="angle", unit="rad", suffix="_rad", at_l
 Share = Annotated[float, Kind(dimension="share", unit="1", at_least=0.0, at_most=1.0)]
 PositiveShare = Annotated[float, Kind(dimension="share", unit="1", above=0.0, at_most=1.0)]
 Ratio = Annotated[float, Kind(dimension="share", unit="1", at_least=0.0)]
+Deviation = Annotated[float, Kind(dimension="share", unit="1", at_least=0.0, at_most=0.9)]
+"""Largest relative deviation from a value, either way. [1]"""
+PressureDeviation = Annotated[float, Kind(dimension="pressure_difference", unit="Pa", suffix="_Pa", at_least=0.0)]
+"""Largest deviation from a pressure, either way. [Pa]"""
 Number = Annotated[float, Kind(dimension="number", unit="1", at_least=0.0)]
 PositiveNumber = Annotated[float, Kind(dimension="number", unit="1", above=0.0)]
 Index = Annotated[float, Kind(dimension="number", unit="1", at_least=1.0, at_most=1.4)]

@@ -4,6 +4,7 @@ from actuator.parts.actuator import Actuator, Require
 from actuator.parts.holding import Holding
 from actuator.parts.load import Friction, Load, ProcessForce
 from actuator.parts.project import Compressor, Machine, Money, Plant, Project, Site
+from actuator.parts.spread import Spread
 from actuator.parts.valve import Throttle, Valve
 
 __all__ = [
@@ -19,6 +20,7 @@ __all__ = [
     "Project",
     "Require",
     "Site",
+    "Spread",
     "Throttle",
     "Valve",
 ]

@@ -24,6 +24,7 @@ from actuator.kinds import (
 )
 from actuator.parts.holding import Holding
 from actuator.parts.load import Friction, Load
+from actuator.parts.spread import Spread
 from actuator.parts.valve import Throttle, Valve
 
 ActuatorKind = Literal["double-acting"]
@@ -178,6 +179,9 @@ class Actuator:
         default_factory=Holding
     )
     require: Annotated[Require, Entry("Requirements", "What the job asks.")] = field(default_factory=Require)
+    spread: Annotated[Spread, Entry("Spread", "How far the values may lie from the document's.")] = field(
+        default_factory=Spread
+    )
 
     def __post_init__(self) -> None:
         check(self)

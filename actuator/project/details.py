@@ -6,7 +6,7 @@ import math
 from typing import Any
 
 from actuator import kinds
-from actuator.parts import Actuator, Friction, Holding, Load, ProcessForce, Require, Throttle, Valve
+from actuator.parts import Actuator, Friction, Holding, Load, ProcessForce, Require, Spread, Throttle, Valve
 from actuator.project.fields import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
 from actuator.project.limits import beyond
 from actuator.project.paths import Steps
@@ -181,4 +181,14 @@ def require(walk: Walk, steps: Steps, here: Any) -> Require | None:
     if len(walk.problems) > before:
         return None
     made: Require | None = walk.built(Require, steps, values)
+    return made
+
+
+def spread(walk: Walk, steps: Steps, here: Any) -> Spread | None:
+    """How far the values may lie from the document's."""
+    before = len(walk.problems)
+    values = walk.table(Spread, steps, here)
+    if values is None or len(walk.problems) > before:
+        return None
+    made: Spread | None = walk.built(Spread, steps, values)
     return made

@@ -114,6 +114,7 @@ def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator 
         "throttle": details.throttle(walk, (*steps, "throttle"), values.get("throttle")),
         "holding": details.holding(walk, (*steps, "holding"), values.get("holding", {})),
         "require": details.require(walk, (*steps, "require"), values.get("require", {})),
+        "spread": details.spread(walk, (*steps, "spread"), values.get("spread", {})),
     }
     if len(walk.problems) > before or not _follow(values, machine):
         return None

@@ -23,6 +23,7 @@ _HEADERS = {
     "Valve": "[machine.actuator.valve]",
     "Throttle": "[machine.actuator.throttle]",
     "Requirements": "[machine.actuator.require]",
+    "Spread": "[machine.actuator.spread]",
     "Holding": "[machine.actuator.holding]",
     "Compressor": "[[plant.compressor]]",
     "Money": "[money]",

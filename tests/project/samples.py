@@ -82,6 +82,13 @@ stroke_time = "1.2 s"                     # each way, command to end
 force_reserve = "30 %"
 buckling_safety = 4.0
 force_at_end = "0 N"                      # and how long after arrival it stands
+
+[machine.actuator.spread]                 # worst-case pair and bands
+supply_pressure = "0.3 bar"
+friction = "30 %"
+mass = "10 %"
+conductance = "10 %"
+delay = "20 %"
 """
 """The example of the design: every field that format 1 has in this version."""
 

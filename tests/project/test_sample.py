@@ -16,6 +16,7 @@ from actuator.parts import (
     Project,
     Require,
     Site,
+    Spread,
     Throttle,
     Valve,
 )
@@ -100,6 +101,7 @@ def test_what_is_left_out_follows_the_stated_rules() -> None:
     assert pusher.closed_length == 0.05
     assert pusher.bearing_length == 0.025
     assert pusher.holding == Holding()
+    assert pusher.spread == Spread(supply_pressure=3e4, friction=0.3, mass=0.1, conductance=0.1, delay=0.2)
     assert pusher.throttle.kind == "none"
     assert (pusher.valve.exhaust_c, pusher.valve.exhaust_b) == (2e-8, 0.3)
     assert pusher.require == Require()

@@ -31,6 +31,7 @@ def test_groups_of_the_form() -> None:
         "Throttle",
         "Holding",
         "Requirements",
+        "Spread",
         "Compressor",
         "Money",
     ]
