@@ -9,6 +9,7 @@ from actuator.energy.cost import YearlyCost
 from actuator.energy.indicator import Indicator
 from actuator.errors import Refusal
 from actuator.parts import Actuator, Machine, Project
+from actuator.stroke.dynamics import Dynamics
 from actuator.stroke.result import Path, StrokeResult
 
 
@@ -99,6 +100,7 @@ class ActuatorResult:
     indicator: Indicator
     paths: tuple[Path, ...]
     stroke: StrokeResult | Refusal
+    dynamics: Dynamics | Refusal
     air: Air | Refusal
     cost: YearlyCost | Refusal
     """Of one machine's actuator, a year."""

@@ -104,6 +104,8 @@ def _actuator(at: At, histories: bool) -> Tree:
         tree["remarks"] += [text for text in result.stroke.remarks if text not in tree["remarks"]]
         if histories:
             tree["histories"] = _histories(result.stroke)
+            if not isinstance(result.dynamics, Refusal):
+                tree["histories"]["force_N"] = result.dynamics.force.tolist()
     if histories:
         tree["indicator"] |= {key: list(getattr(result.indicator, name)) for name, key in DIAGRAM.items()}
     return tree

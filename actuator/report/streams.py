@@ -12,6 +12,7 @@ from typing import NoReturn, TextIO
 
 _SPELLED = str.maketrans(
     {
+        "∓": "-/+",
         "·": "*",
         "×": "x",
         "−": "-",

@@ -30,6 +30,7 @@ from actuator.results import (
     Static,
     Supply,
 )
+from actuator.stroke.dynamics import Dynamics, HalfDynamics
 from actuator.stroke.result import HalfStroke, Ledger, Path, StrokeResult
 
 DOCUMENT = """
@@ -134,6 +135,11 @@ def stroke_result(numbers: Iterator[float], *, completed: bool = True) -> Stroke
     )
 
 
+def _dynamics(numbers: Iterator[float]) -> Dynamics:
+    extend, retract = (_filled(HalfDynamics, numbers) for _ in range(2))
+    return Dynamics(extend=extend, retract=retract, force=np.linspace(-1.0, 1.0, 4))
+
+
 def _criteria(part: Any) -> tuple[Criterion, ...]:
     if part.require.stroke_time is None:
         return ()
@@ -177,6 +183,7 @@ def _actuator(part: Any, numbers: Iterator[float], stroke: StrokeResult | Refusa
         indicator=_filled(Indicator, numbers, remarks=("an invented remark about the diagram",), **points),
         paths=tuple(_filled(Path, numbers, name=name) for name in flow.PATHS),
         stroke=stroke,
+        dynamics=stroke if isinstance(stroke, Refusal) else _dynamics(numbers),
         air=stroke if isinstance(stroke, Refusal) else _filled(Air, numbers, difference="an invented reason"),
         cost=stroke if isinstance(stroke, Refusal) else _filled(YearlyCost, numbers),
         criteria=_criteria(part),

@@ -22,6 +22,10 @@ HALF = (
     "peak_speed_m_s",
     "end_speed_m_s",
     "end_energy_J",
+    "natural_frequency_Hz",
+    "peak_deceleration_m_s2",
+    "release_time_s",
+    "unloaded_time_s",
 )
 LEDGER = (
     "supplied",
@@ -144,7 +148,8 @@ def test_histories_come_only_when_asked_for() -> None:
     assert "histories" not in without
     assert "volume_m3" not in without["indicator"]
     found = as_data(answer(), histories=True)["machines"][0]["actuators"][0]
-    assert set(found["histories"]) == set(HISTORIES.values())
+    assert set(found["histories"]) == {*HISTORIES.values(), "force_N"}
+    assert found["histories"]["force_N"][0] == -1.0
     assert {len(values) for values in found["histories"].values()} == {4}
     assert found["indicator"]["volume_m3"] == [1.0, 2.0]
 
