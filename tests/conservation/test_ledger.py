@@ -46,12 +46,14 @@ def test_base_case_produces_the_printed_entropy() -> None:
 @MANY
 @given(cylinders())
 def test_items_add_up_to_what_is_supplied_less_what_is_kept(case: Case) -> None:
-    items = solved(case).ledger
+    found = solved(case)
+    items = found.ledger
     booked = (
         items.load + items.friction + items.stop + items.supply_path
         + items.exhaust_path + items.heat + items.exhaust
     )  # fmt: skip
-    scale = abs(items.supplied) + abs(items.exhaust) + abs(items.load) + 1e-6
+    # where next to nothing is supplied, the steps' tolerance on what the chambers hold is what remains
+    scale = abs(items.supplied) + abs(items.exhaust) + abs(items.load) + 1e-2 * found.stored
     assert items.residual == pytest.approx(items.supplied - booked, abs=1e-12 * scale)
     assert items.residual == pytest.approx(items.stored_change, abs=CLOSES * scale)
 
