@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from dataclasses import replace
+from typing import Any
 
 import numpy as np
 
@@ -54,16 +56,18 @@ __all__ = [
 
 
 def never() -> bool:
+    "varied_result",
     """Tell that nobody asked to stop."""
     return False
 
 
 def air_of(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult) -> Air:
-    """Air of a cycle as simulated, beside the two hand figures, and why they differ."""
+    """Air of a cycle as simulated, beside the two hand figures, and why they differ; all cylinders together."""
     p_extend = machine.supply_pressure
     p_retract = actuator.return_pressure or p_extend
-    swept_cap = actuator.area_cap * actuator.stroke
-    swept_rod = actuator.area_rod * actuator.stroke
+    on_cap, on_rod = (actuator.count * (way in actuator.air_ways) for way in ("extend", "retract"))
+    swept_cap, dead_cap = (on_cap * size for size in (actuator.area_cap * actuator.stroke, actuator.dead_volume_cap))
+    swept_rod, dead_rod = (on_rod * size for size in (actuator.area_rod * actuator.stroke, actuator.dead_volume_rod))
     drawn = stroke.extend.air_drawn + stroke.retract.air_drawn
     textbook = textbook_air(
         p_extend=p_extend,
@@ -79,8 +83,8 @@ def air_of(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResul
         temp_supply=machine.supply_temperature,
         swept_cap=swept_cap,
         swept_rod=swept_rod,
-        dead_cap=actuator.dead_volume_cap,
-        dead_rod=actuator.dead_volume_rod,
+        dead_cap=dead_cap,
+        dead_rod=dead_rod,
     )
     delay, period = actuator.valve.delay, machine.cycle_time
     extends, retracts = (
@@ -94,18 +98,18 @@ def air_of(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResul
             dead=dead,
             p_full=float(p[full]),
             temp_full=float(temp[full]),
-            volume_full=float(volume[full]),
+            volume_full=float(volume[full]) if swept else 0.0,
             p_empty=float(p[empty]),
             temp_empty=float(temp[empty]),
-            volume_empty=float(volume[empty]),
+            volume_empty=float(volume[empty]) if swept else 0.0,
         )
         for p_supply, swept, dead, p, temp, volume, full, empty in (
             (
-                p_extend, swept_cap, actuator.dead_volume_cap,
+                p_extend, swept_cap, dead_cap,
                 stroke.p_cap, stroke.temp_cap, stroke.volume_cap, retracts, extends,
             ),
             (
-                p_retract, swept_rod, actuator.dead_volume_rod,
+                p_retract, swept_rod, dead_rod,
                 stroke.p_rod, stroke.temp_rod, stroke.volume_rod, extends, retracts,
             ),
         )
@@ -155,8 +159,6 @@ def _actuator(
     actuator: Actuator, machine: Machine, project: Project, supply: Supply | Refusal, stroke: StrokeResult | Refusal
 ) -> ActuatorResult:
     site = project.site
-    static = static_forces(actuator, machine, site)
-    rod = rod_column(actuator, static)
     paths = flow_paths(actuator)
     par = np.array(parameters(actuator, machine, site, paths))
     air = air_of(actuator, machine, site, stroke) if isinstance(stroke, StrokeResult) else stroke

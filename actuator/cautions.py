@@ -30,6 +30,7 @@ _SIGNAL_LOST = {
     "5/2 detent": "the valve stays where it is and the piston completes its stroke with full force",
     "5/3 closed": "the ports close and the piston stops on trapped air: it gives under load, and creeps as seals leak",
     "5/3 exhausted": "both chambers vent and the piston is free: whatever pushes it moves it",
+    "3/2": "the valve vents the port and the spring drives the piston back from wherever it is",
     "5/3 pressurised": "both chambers are pressurised and the piston is driven out by the pressure on the "
     "area of its rod",
 }
@@ -67,7 +68,9 @@ def _weight(actuator: Actuator) -> Iterator[Caution]:
     if pull == 0.0:
         return
     way = "retracts" if pull > 0.0 else "extends"
-    held = actuator.friction.breakaway + load.guide_friction * load.mass * GRAVITY * math.cos(load.inclination)
+    held = actuator.count * actuator.friction.breakaway + load.guide_friction * load.mass * GRAVITY * math.cos(
+        load.inclination
+    )
     friction = (
         "The friction given would hold it, but friction is no lock: wear, oil and vibration lower it."
         if abs(pull) <= held
@@ -88,14 +91,32 @@ def _loss(actuator: Actuator) -> Iterator[Caution]:
     yield _caution(
         "valve.function",
         f"When the signal is lost with a {function} valve, {_SIGNAL_LOST[function]}. When the supply is lost "
-        "the force goes with the pressure, and the piston follows load and weight. An emergency stop has to "
-        "be judged for both, and for the return of either.",
+        f"the force goes with the pressure, and the piston follows {'its spring, ' if actuator.spring else ''}load "
+        "and weight. An emergency stop has to be judged for both, and for the return of either.",
+        ISO_4414,
+    )
+
+
+def _spring(actuator: Actuator) -> Iterator[Caution]:
+    """A spring that moves the load without air, and is never free of load."""
+    if actuator.spring is None:
+        return
+    count, end = actuator.count, "retracted" if actuator.kind == "spring-return" else "extended"
+    preload, largest = count * actuator.spring.preload, count * actuator.spring.largest(actuator.stroke)
+    yield _caution(
+        "spring",
+        f"The spring drives the piston to its {end} end, with {largest:.4g} N falling to {preload:.4g} N, whenever air "
+        "or signal is lost, from wherever it is: shutting the air off does not make this load safe. Pushed back over "
+        f"the whole stroke it stores {count * actuator.spring.energy(actuator.stroke):.3g} J, and its preload stays "
+        "with no air in the cylinder: do not take the cylinder apart without the maker's instructions.",
         ISO_4414,
     )
 
 
 def _first_stroke(actuator: Actuator, stroke: StrokeResult | Refusal) -> Iterator[Caution]:
-    """Both chambers vented: nothing to push against."""
+    """Both chambers vented: nothing to push against. A single-acting cylinder never has anything there."""
+    if actuator.single_acting:
+        return
     energy = ""
     if not isinstance(stroke, Refusal) and not isinstance(stroke.extend.end_energy, Refusal):
         energy = f" than the {stroke.extend.end_energy:.3g} J of the periodic cycle"
@@ -114,10 +135,13 @@ def _first_stroke(actuator: Actuator, stroke: StrokeResult | Refusal) -> Iterato
 
 def _impact(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal) -> Iterator[Caution]:
     """Pinch points and the energy at the ends."""
-    force = (machine.supply_pressure - site.ambient_pressure) * actuator.area_cap
+    force = actuator.count * (machine.supply_pressure - site.ambient_pressure) * actuator.area_cap
+    if actuator.spring is not None and actuator.kind == "spring-extend":
+        force = actuator.count * actuator.spring.largest(actuator.stroke)
+    moving = "Carriage" if actuator.kind == "rodless" else "Rod"
     yield _caution(
         "static.theoretical_extend",
-        f"Rod, load and fixed parts pinch with up to {force:.4g} N extending, and go on pushing at "
+        f"{moving}, load and fixed parts pinch with up to {force:.4g} N extending, and go on pushing at "
         "standstill. Guard the whole way of the load.",
         ISO_4414,
     )
@@ -172,11 +196,18 @@ def _stored(actuator: Actuator, machine: Machine, site: Site) -> Iterator[Cautio
     p, p0 = machine.supply_pressure, site.ambient_pressure
     if p <= p0:
         return
-    volume = actuator.area_cap * actuator.stroke + actuator.dead_volume_cap
+    end, side = ("Extended", "cap") if "extend" in actuator.air_ways else ("Retracted", "rod")
+    swept, dead = (
+        (actuator.area_cap, actuator.dead_volume_cap)
+        if side == "cap"
+        else (actuator.area_rod, actuator.dead_volume_rod)
+    )
+    volume = actuator.count * (swept * actuator.stroke + dead)
+    chambers = f"chamber{'s hold' if actuator.count > 1 else ' holds'}"
     energy = stored_energy(p, volume, p0)
     yield _caution(
         "stroke",
-        f"Extended, the cap chamber holds {volume * 1e3:.3g} L at supply pressure: "
+        f"{end}, the {side} {chambers} {volume * 1e3:.3g} L at supply pressure: "
         f"p·V = {(p - p0) * volume / 100.0:.3g} bar·L gauge, about {energy:.3g} J if it bursts free. Air may "
         "stay trapped after the supply is shut off: vent it and prove it before opening a fitting. For "
         "receivers compare p·V with the local pressure equipment rules.",
@@ -203,6 +234,8 @@ def _noise_and_blow_off(machine: Machine, site: Site) -> Iterator[Caution]:
 
 def _side_load(actuator: Actuator, machine: Machine, site: Site) -> Iterator[Caution]:
     """A rod that bends, or leans on its gland."""
+    if actuator.kind == "rodless":
+        return
     beam = extended_rod(
         rod=actuator.rod,
         bore=actuator.bore,
@@ -274,6 +307,7 @@ def cautions(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeRes
     return (
         *_weight(actuator),
         *_loss(actuator),
+        *_spring(actuator),
         *_first_stroke(actuator, stroke),
         *_impact(actuator, machine, site, stroke),
         *_side_load(actuator, machine, site),

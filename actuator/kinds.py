@@ -93,6 +93,7 @@ Volume = Annotated[float, Kind(dimension="volume", unit="m**3", suffix="_m3", ab
 Mass = Annotated[float, Kind(dimension="mass", unit="kg", suffix="_kg", above=0.0)]
 Force = Annotated[float, Kind(dimension="force", unit="N", suffix="_N")]
 OpposingForce = Annotated[float, Kind(dimension="force", unit="N", suffix="_N", at_least=0.0)]
+Stiffness = Annotated[float, Kind(dimension="stiffness", unit="N/m", suffix="_N_m", at_least=0.0)]
 Viscous = Annotated[float, Kind(dimension="viscous", unit="N*s/m", suffix="_N_s_m", at_least=0.0)]
 Speed = Annotated[float, Kind(dimension="speed", unit="m/s", suffix="_m_s", at_least=0.0)]
 PositiveSpeed = Annotated[float, Kind(dimension="speed", unit="m/s", suffix="_m_s", above=0.0)]

@@ -15,12 +15,12 @@ from actuator.stroke.result import Path, StrokeResult
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Static:
-    """Forces without motion."""
+    """Forces without motion, of all cylinders in parallel together."""
 
     theoretical_extend: float
-    """(p_s - p0)·A_cap. [N]"""
+    """(p_s - p0)·A_cap, less the spring at the end of an air stroke; the spring's preload where it drives. [N]"""
     theoretical_retract: float
-    """(p_s - p0)·A_rod, at the return pressure where there is one. [N]"""
+    """The same with A_rod, at the return pressure where there is one. [N]"""
     load_extend: float
     """Largest force that opposes extending, worst position, without inertia and cylinder friction. [N]"""
     load_retract: float
@@ -32,13 +32,15 @@ class Static:
     """(theoretical - running friction - load)/load. [1]"""
     force_reserve_retract: float | Refusal
     required_bore: float | Refusal
-    """Smallest bore that carries load, friction and wanted reserve both ways, rod in proportion. [m]"""
+    """Smallest bore of one cylinder that carries load, spring, friction and wanted reserve, rod in proportion. [m]"""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Rod:
-    """The rod as a column."""
+    """The rod of one cylinder as a column."""
 
+    largest_push: float | Refusal
+    """On one rod: (p_s - p0)·A_cap, or the spring's largest force where that drives it out. [N]"""
     buckling_load: float | Refusal
     """[N]"""
     buckling_safety: float | Refusal
@@ -49,11 +51,11 @@ class Rod:
     """``"Euler"`` or ``"Johnson"``."""
     longest_stroke: float | Refusal
     """Longest stroke that keeps the wanted safety (4 where none is asked). [m]"""
-    overhang: float
+    overhang: float | Refusal
     """Gland to rod end, extended. [m]"""
-    sag: float
+    sag: float | Refusal
     """Sag of the rod's end under its own weight and the side load, as if nothing guided it. [m]"""
-    bearing_load: float
+    bearing_load: float | Refusal
     """What the gland carries under the same, with the piston as the other bearing. [N]"""
 
 

@@ -155,6 +155,13 @@ DIMENSIONS: dict[str, Dimension] = {
         us=("lbf*s/in",),
         example="30 N*s/m",
     ),
+    "stiffness": Dimension(
+        name="a force per length",
+        forms={"N/m": "N/m", "N/mm": "N/mm", "kN/m": "kN/m", **dict.fromkeys(("lbf/in", "lb/in"), "lbf/inch")},
+        si=("N/mm", "N/m"),
+        us=("lbf/in",),
+        example="0.5 N/mm",
+    ),
     "speed": Dimension(
         name="a speed",
         forms={

@@ -73,7 +73,7 @@ def _loop(title: str, side: str, view: View, stroke: StrokeResult, pressure: Axi
     result = view.result
     assert result is not None
     ending = "_retract" if side == "rod" else ""
-    ideal_v = np.array(getattr(result.indicator, f"volume{ending}"), dtype=np.float64)
+    ideal_v = result.part.count * np.array(getattr(result.indicator, f"volume{ending}"), dtype=np.float64)
     ideal_p = np.array(getattr(result.indicator, f"pressure{ending}"), dtype=np.float64)
     volume: NDArray[np.float64] = getattr(stroke, f"volume_{side}")
     mark = ROD if side == "rod" else CAP
@@ -94,7 +94,13 @@ def _loop(title: str, side: str, view: View, stroke: StrokeResult, pressure: Axi
         tone=3 if side == "rod" else 2,
     )
     axis = Axis(unit=_unit(Volume, view), include=(0.0,))
-    return Picture(title=title, x=axis, y=pressure, curves=(ideal, simulated), reads=_unit(Time, view))
+    return Picture(
+        title=title,
+        x=axis,
+        y=pressure,
+        curves=(ideal, simulated) if len(ideal_v) else (simulated,),
+        reads=_unit(Time, view),
+    )
 
 
 def span(view: View) -> tuple[float, float]:

@@ -15,7 +15,7 @@ from actuator.unit_table import System
 from actuator.units import Reading, scale
 from tui.tables import Row, Section
 
-CYLINDER_GROUPS = ("Static force", "Rod", "Ideal indicator diagram, extending", "Air of a cycle")
+CYLINDER_GROUPS = ("Static force", "Rod", "Ideal indicator diagram", "Air of a cycle")
 STROKE_GROUPS = ("Motion",)
 LEDGER, OF_WHICH, LOSS = "Exergy of a cycle", "Of which (not summed)", "Exhaust loss"
 UPSTREAM, DEMAND, MONEY, SUPPLY = (

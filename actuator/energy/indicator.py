@@ -48,8 +48,10 @@ class Diagram:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Indicator:
-    """Ideal indicator diagram of one stroke (extending), and what the ideal would need."""
+    """Ideal indicator diagram of one stroke of one cylinder, and what the ideal would need."""
 
+    direction: str
+    """Of the stroke: ``"extend"``, or ``"retract"`` where a spring drives the cylinder out."""
     cut_off: float
     """[1]"""
     work: float
@@ -67,7 +69,7 @@ class Indicator:
     unused_share_here: float
     """The same for this diagram, with its cut-off and clearance. [1]"""
     volume: tuple[float, ...]
-    """Corner and curve points of the diagram, closed loop. [m³]"""
+    """Corner and curve points of the cap side's diagram, closed loop; empty where it takes no air. [m³]"""
     pressure: tuple[float, ...]
     """Absolute, same length as ``volume``. [Pa]"""
     volume_retract: tuple[float, ...]
@@ -198,7 +200,7 @@ def ideal_indicator(
     temp_ambient: float,
     closure: float = 0.0,
 ) -> Indicator:
-    """Ideal diagrams of both chambers of a cylinder, and what the extending stroke would need.
+    """Ideal diagrams of the chambers of one cylinder, and what its extending stroke would need.
 
     Parameters
     ----------
@@ -216,7 +218,8 @@ def ideal_indicator(
     Returns
     -------
     Indicator
-        The dead volumes are the clearance. ``unused_share_here`` is 1 − work/(air · flow exergy), isothermal.
+        Of the retracting stroke where a spring drives the cylinder out. The dead volumes are the clearance.
+        ``unused_share_here`` is 1 − work/(air · flow exergy), isothermal.
     """
     index = actuator.polytropic_index if actuator.polytropic_index is not None else GAMMA
     p_return = actuator.return_pressure if actuator.return_pressure is not None else p_supply
@@ -239,22 +242,29 @@ def ideal_indicator(
         )
     )
     exergy = float(flow_exergy(p_supply, temp_supply, p_ambient, temp_ambient))
-    per_kg = cap.work / cap.air
+    on_cap, on_rod = (way in actuator.air_ways for way in ("extend", "retract"))
+    first = cap if on_cap else rod
+    per_kg = first.work / first.air
     return Indicator(
+        direction="extend" if on_cap else "retract",
         cut_off=actuator.cut_off,
-        work=cap.work,
-        mean_effective_pressure=cap.mean_effective_pressure,
-        air=cap.air,
-        air_adiabatic=cap.air_adiabatic,
+        work=first.work,
+        mean_effective_pressure=first.mean_effective_pressure,
+        air=first.air,
+        air_adiabatic=first.air_adiabatic,
         work_per_kg=per_kg,
         unused_share=float(unused_share(p_supply, p_ambient)),
         unused_share_here=1.0 - per_kg / exergy if exergy > 0.0 else 0.0,
-        volume=cap.volume,
-        pressure=cap.pressure,
-        volume_retract=rod.volume,
-        pressure_retract=rod.pressure,
-        remarks=tuple(f"Extending: {item}" for item in cap.remarks)
-        + tuple(f"Retracting: {item}" for item in rod.remarks),
+        volume=cap.volume if on_cap else (),
+        pressure=cap.pressure if on_cap else (),
+        volume_retract=rod.volume if on_rod else (),
+        pressure_retract=rod.pressure if on_rod else (),
+        remarks=(
+            *(() if on_cap else ("The ideal diagram is that of the retracting stroke.",)),
+            *(("The ideal diagram is that of one cylinder.",) if actuator.count > 1 else ()),
+            *(f"Extending: {item}" for item in cap.remarks if on_cap),
+            *(f"Retracting: {item}" for item in rod.remarks if on_rod),
+        ),
     )
 
 

@@ -5,6 +5,7 @@ from actuator.parts.holding import Holding
 from actuator.parts.load import Friction, Load, ProcessForce
 from actuator.parts.project import Compressor, Machine, Money, Plant, Project, Site
 from actuator.parts.spread import Spread
+from actuator.parts.spring import Spring
 from actuator.parts.valve import Throttle, Valve
 
 __all__ = [
@@ -21,6 +22,7 @@ __all__ = [
     "Require",
     "Site",
     "Spread",
+    "Spring",
     "Throttle",
     "Valve",
 ]

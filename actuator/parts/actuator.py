@@ -9,12 +9,14 @@ from typing import Annotated, Literal
 from actuator.errors import InputError, Problem
 from actuator.kinds import (
     AbsPressure,
+    Count,
     Entry,
     HeatTransfer,
     Index,
     Length,
     OpposingForce,
     Period,
+    Position,
     PositiveNumber,
     PositiveShare,
     Ratio,
@@ -25,9 +27,12 @@ from actuator.kinds import (
 from actuator.parts.holding import Holding
 from actuator.parts.load import Friction, Load
 from actuator.parts.spread import Spread
+from actuator.parts.spring import Spring
 from actuator.parts.valve import Throttle, Valve
 
-ActuatorKind = Literal["double-acting"]
+ActuatorKind = Literal["double-acting", "spring-return", "spring-extend", "through-rod", "rodless"]
+SPRING_KINDS = ("spring-return", "spring-extend")
+"""Kinds that take air on one side, a spring drives them back."""
 Mounting = Literal["foot", "front flange", "rear flange", "rear pin", "front trunnion", "mid trunnion"]
 RodEnd = Literal["fixed-guided", "hinged-guided", "free"]
 
@@ -65,15 +70,33 @@ class Require:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Actuator:
-    """One air cylinder in a machine.
+    """One air cylinder in a machine, or several equal ones on one load.
 
-    Absolute pressures inside. Positions run from the retracted (cap) end.
+    Absolute pressures inside. Positions run from the retracted (cap) end. Geometry, friction, spring, valve and
+    throttles are those of one cylinder; load, moved mass and requirements are of the whole.
     """
 
     name: Annotated[str, Entry("Name", "Unique in the machine.", example='"Pusher"')]
-    kind: Annotated[ActuatorKind, Entry("Kind", "How the cylinder works.")] = "double-acting"
+    kind: Annotated[ActuatorKind, Entry("Kind", "How the cylinder works.", default="double-acting")] = "double-acting"
+    count: Annotated[
+        Count,
+        Entry(
+            "In parallel",
+            "Equal cylinders on one load, each with this valve and these throttles; load and requirements are of all.",
+            default="1",
+            example="1",
+        ),
+    ] = 1
     bore: Annotated[Length, Entry("Bore", "Inside diameter of the barrel.", example="50 mm")]
-    rod: Annotated[Length, Entry("Rod", "Diameter of the piston rod.", example="20 mm")]
+    rod: Annotated[
+        Position,
+        Entry(
+            "Rod",
+            "Diameter of the piston rod.",
+            default="none, as in a rodless cylinder; every other kind needs it",
+            example="20 mm",
+        ),
+    ]
     stroke: Annotated[Length, Entry("Stroke", "Way of the piston from end to end.", example="400 mm")]
     dead_volume_cap: Annotated[
         Volume,
@@ -173,6 +196,9 @@ class Actuator:
     ] = None
     load: Annotated[Load, Entry("Load", "What the actuator moves.")]
     friction: Annotated[Friction, Entry("Friction", "Friction of the cylinder.")]
+    spring: Annotated[
+        Spring | None, Entry("Spring", "Drives a single-acting cylinder back; only for spring-return, spring-extend.")
+    ] = None
     valve: Annotated[Valve, Entry("Valve", "The directional valve.")]
     throttle: Annotated[Throttle, Entry("Throttle", "One-way flow controls.")] = field(default_factory=Throttle)
     holding: Annotated[Holding, Entry("Holding", "What holds the load when supply or signal is lost.")] = field(
@@ -185,7 +211,7 @@ class Actuator:
 
     def __post_init__(self) -> None:
         check(self)
-        problems = []
+        problems = self._kind_problems()
         if self.rod >= self.bore:
             problems.append(
                 Problem(path="rod", given=f"{self.rod:g} m", allowed=f"must be below the bore, {self.bore:g} m")
@@ -210,12 +236,69 @@ class Actuator:
         if problems:
             raise InputError(*problems)
 
+    def _kind_problems(self) -> list[Problem]:
+        """What a cylinder of this kind must have, and cannot have."""
+        found = []
+        if (self.rod > 0.0) == (self.kind == "rodless"):
+            allowed = "a rodless cylinder has none: 0" if self.rod > 0.0 else "must be above 0 m"
+            found.append(Problem(path="rod", given=f"{self.rod:g} m", allowed=allowed))
+        if (self.spring is not None) != self.single_acting:
+            allowed = (
+                f"a {self.kind} cylinder has none" if self.spring is not None else f"a {self.kind} cylinder has one"
+            )
+            found.append(Problem(path="spring", given="", allowed=allowed))
+        if (self.valve.function == "3/2") != self.single_acting:
+            allowed = 'must be "3/2"' if self.single_acting else '"3/2" is for single-acting cylinders'
+            found.append(Problem(path="valve.function", given=self.valve.function, allowed=allowed))
+        if self.single_acting and self.return_pressure is not None:
+            given = f"{self.return_pressure:g} Pa"
+            found.append(Problem(path="return_pressure", given=given, allowed="a spring drives this cylinder back"))
+        found += [
+            Problem(path=f"throttle.{key}", given="", allowed=f'needed with kind = "{self.throttle.kind}"')
+            for key in acting_needles(self.kind, self.throttle.kind)
+            if getattr(self.throttle, key) is None
+        ]
+        return found
+
+    @property
+    def single_acting(self) -> bool:
+        """Whether air drives it one way only, and a spring the other."""
+        return self.kind in SPRING_KINDS
+
+    @property
+    def air_ways(self) -> tuple[str, ...]:
+        """Ways that air drives it: ``"extend"`` fills the cap side, ``"retract"`` the rod side."""
+        return {"spring-return": ("extend",), "spring-extend": ("retract",)}.get(self.kind, ("extend", "retract"))
+
     @property
     def area_cap(self) -> float:
-        """Piston area on the cap side. [m²]"""
-        return math.pi / 4.0 * self.bore**2
+        """Piston area on the cap side of one cylinder: annular where a rod goes through it. [m²]"""
+        return self.area_rod if self.kind == "through-rod" else math.pi / 4.0 * self.bore**2
 
     @property
     def area_rod(self) -> float:
-        """Annular piston area on the rod side. [m²]"""
+        """Piston area on the rod side of one cylinder: annular, full without a rod. [m²]"""
         return math.pi / 4.0 * (self.bore**2 - self.rod**2)
+
+
+def acting_needles(kind: str, metering: str) -> tuple[str, ...]:
+    """Needles of the throttles that meter any flow.
+
+    Parameters
+    ----------
+    kind : str
+        Of the cylinder; a single-acting one has one port.
+    metering : str
+        Kind of the throttle.
+
+    Returns
+    -------
+    tuple of str
+        Fields of the throttle. At the one port of a single-acting cylinder meter-in acts on the way that air
+        drives, meter-out on the way that the spring drives.
+    """
+    if metering == "none":
+        return ()
+    if kind not in SPRING_KINDS:
+        return ("extend_c", "retract_c")
+    return ("extend_c",) if (kind == "spring-return") == (metering == "meter-in") else ("retract_c",)

@@ -76,7 +76,7 @@ class Friction:
         Entry(
             "Breakaway",
             "Friction force that starting has to overcome.",
-            default="8 % of (p_s - p0)*A_cap, common practice, no source",
+            default="8 % of (p_s - p0)*A_cap (spring-extend: A_rod), common practice, no source",
             example="90 N",
         ),
     ]
@@ -85,7 +85,7 @@ class Friction:
         Entry(
             "Running",
             "Friction force while moving, without its viscous part.",
-            default="5 % of (p_s - p0)*A_cap, common practice, no source",
+            default="5 % of (p_s - p0)*A_cap (spring-extend: A_rod), common practice, no source",
             example="60 N",
         ),
     ]

@@ -15,7 +15,7 @@ from actuator.kinds import (
     check,
 )
 
-ValveFunction = Literal["5/2 spring", "5/2 detent", "5/3 closed", "5/3 exhausted", "5/3 pressurised"]
+ValveFunction = Literal["5/2 spring", "5/2 detent", "5/3 closed", "5/3 exhausted", "5/3 pressurised", "3/2"]
 ThrottleKind = Literal["meter-out", "meter-in", "none"]
 
 
@@ -68,7 +68,7 @@ class Valve:
         Entry(
             "Function",
             "Ports, positions, and what brings the valve to rest.",
-            default="5/2 spring, common practice, no source",
+            default="5/2 spring; 3/2 for single-acting kinds; common practice, no source",
         ),
     ] = "5/2 spring"
     delay: Annotated[
@@ -127,7 +127,9 @@ class Throttle:
     def __post_init__(self) -> None:
         check(self)
         if self.kind != "none":
-            missing = [key for key in ("extend_c", "retract_c", "free_c") if getattr(self, key) is None]
+            needles = (self.extend_c, self.retract_c)
+            missing = ["extend_c", "retract_c"] if needles == (None, None) else []
+            missing += ["free_c"] if self.free_c is None else []
             if missing:
                 raise InputError(
                     *(

@@ -7,6 +7,8 @@ from typing import Any
 
 from actuator import kinds
 from actuator.parts import Actuator, Friction, Holding, Load, ProcessForce, Require, Spread, Throttle, Valve
+from actuator.parts.actuator import acting_needles
+from actuator.project import by_kind
 from actuator.project.fields import ALTERNATES, FAMILIES, PROCESS_FORCE, fields
 from actuator.project.limits import beyond
 from actuator.project.paths import Steps
@@ -61,10 +63,11 @@ def friction(walk: Walk, steps: Steps, here: Any, actuator: Values, machine: Val
     """Friction; what is left out follows from thrust and bore."""
     before = len(walk.problems)
     values = walk.table(Friction, steps, here)
-    supply, bore = machine.get("supply_pressure"), actuator.get("bore")
-    if values is None or supply is None or bore is None or len(walk.problems) > before:
+    supply, bore, rod = machine.get("supply_pressure"), actuator.get("bore"), actuator.get("rod")
+    if values is None or supply is None or bore is None or rod is None or len(walk.problems) > before:
         return None
-    thrust = max(supply - walk.reading.ambient_pressure, 0.0) * math.pi / 4.0 * bore**2
+    inside = rod if actuator.get("kind") in ("spring-extend", "through-rod") else 0.0
+    thrust = max(supply - walk.reading.ambient_pressure, 0.0) * math.pi / 4.0 * (bore**2 - inside**2)
     values.setdefault("breakaway", 0.08 * thrust)
     values.setdefault("coulomb", 0.05 * thrust)
     values.setdefault("viscous", 0.6 * bore * 1000.0)
@@ -80,13 +83,14 @@ def friction(walk: Walk, steps: Steps, here: Any, actuator: Values, machine: Val
     return made
 
 
-def valve(walk: Walk, steps: Steps, here: Any) -> Valve | None:
+def valve(walk: Walk, steps: Steps, here: Any, kind: str) -> Valve | None:
     """Valve; each path's conductance in one of five ways."""
     before = len(walk.problems)
     values = walk.table(Valve, steps, here)
     if values is None:
         return None
     walk.needed(Valve, steps, values, but=("supply_c",))
+    by_kind.valve_function(walk, steps, kind, values)
     values.setdefault("supply_b", fields(Valve)["supply_b"].default)
     values.setdefault("exhaust_b", values["supply_b"])
     for family in FAMILIES:
@@ -132,7 +136,7 @@ def _converted(suffix: str, value: float, b: float) -> float:
     return conversion.conductance_from_effective_area(value)
 
 
-def throttle(walk: Walk, steps: Steps, here: Any) -> Throttle | None:
+def throttle(walk: Walk, steps: Steps, here: Any, cylinder: str) -> Throttle | None:
     """Flow controls; no table, or an empty one, means none."""
     if here is None or here == {}:
         return Throttle()
@@ -144,7 +148,12 @@ def throttle(walk: Walk, steps: Steps, here: Any) -> Throttle | None:
     if "kind" not in values and at not in walk.bad:
         walk.problem(at, None, 'is needed where there is a throttle: write kind = "meter-out", "meter-in" or "none"')
     if values.get("kind", "none") != "none":
-        for key in ("extend_c", "retract_c", "free_c"):
+        acting = acting_needles(cylinder, values["kind"])
+        for key in ("extend_c", "retract_c"):
+            if key in values and key not in acting:
+                why = f"at the one port of a {cylinder} cylinder only {acting[0]} acts with {values['kind']}"
+                walk.problem((*steps, key), walk.at((*steps, key)), f"leave it out: {why}")
+        for key in (*acting, "free_c"):
             if key not in values and (*steps, key) not in walk.bad:
                 entry = fields(Throttle)[key].entry
                 assert entry is not None

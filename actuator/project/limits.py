@@ -16,6 +16,7 @@ LIMITS: dict[str, tuple[float, float]] = {
     "mass": (1e-5, 1e6),
     "force": (1e-6, 1e9),
     "viscous": (1e-6, 1e8),
+    "stiffness": (1e-3, 1e9),
     "speed": (1e-5, 100.0),
     "time": (1e-6, 1e6),
     "angle": (0.0, 10.0),

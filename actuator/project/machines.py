@@ -6,7 +6,7 @@ import math
 from typing import Any
 
 from actuator.parts import Actuator, Machine, Site
-from actuator.project import details
+from actuator.project import by_kind, details
 from actuator.project.fields import fields
 from actuator.project.paths import Steps
 from actuator.project.walk import Values, Walk
@@ -98,8 +98,11 @@ def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator 
     values = walk.table(Actuator, steps, here)
     if values is None:
         return None
+    kind = values.get("kind", "double-acting")
+    if (*steps, "kind") not in walk.bad:
+        by_kind.refuse(walk, steps, kind, values)
     walk.needed(Actuator, steps, values)
-    _size(walk, steps, values)
+    by_kind.rod(walk, steps, kind, values)
     _timing(walk, steps, values, machine)
     _pressure(walk, (*steps, "return_pressure"), values.get("return_pressure"), machine.get("supply_pressure"))
     if "polytropic_index" in values:
@@ -110,8 +113,9 @@ def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator 
     nested = {
         "load": details.load(walk, (*steps, "load"), values.get("load", {}), values),
         "friction": details.friction(walk, (*steps, "friction"), values.get("friction", {}), values, machine),
-        "valve": details.valve(walk, (*steps, "valve"), values.get("valve", {})),
-        "throttle": details.throttle(walk, (*steps, "throttle"), values.get("throttle")),
+        "spring": by_kind.spring(walk, (*steps, "spring"), values.get("spring", {}), kind),
+        "valve": details.valve(walk, (*steps, "valve"), values.get("valve", {}), kind),
+        "throttle": details.throttle(walk, (*steps, "throttle"), values.get("throttle"), kind),
         "holding": details.holding(walk, (*steps, "holding"), values.get("holding", {})),
         "require": details.require(walk, (*steps, "require"), values.get("require", {})),
         "spread": details.spread(walk, (*steps, "spread"), values.get("spread", {})),
@@ -120,14 +124,6 @@ def _actuator(walk: Walk, steps: Steps, here: Any, machine: Values) -> Actuator 
         return None
     actuator: Actuator | None = walk.built(Actuator, steps, {**values, **nested})
     return actuator
-
-
-def _size(walk: Walk, steps: Steps, values: Values) -> None:
-    """The rod fits into the bore."""
-    bore, rod = values.get("bore"), values.get("rod")
-    if bore is not None and rod is not None and rod >= bore:
-        said = walk.said((*steps, "bore"), bore, fields(Actuator)["bore"])
-        walk.problem((*steps, "rod"), walk.at((*steps, "rod")), f"must be below the bore, {said}")
 
 
 def _timing(walk: Walk, steps: Steps, values: Values, machine: Values) -> None:
@@ -159,8 +155,9 @@ def _follow(values: Values, machine: Values) -> bool:
         return False
     bore, rod, stroke, cycle = (float(value) for value in needed if value is not None)
     area = math.pi / 4.0 * bore**2
-    values.setdefault("dead_volume_cap", 0.1 * bore * area)
-    values.setdefault("dead_volume_rod", 0.1 * bore * (area - math.pi / 4.0 * rod**2))
+    annulus = area - math.pi / 4.0 * rod**2
+    values.setdefault("dead_volume_cap", 0.1 * bore * (annulus if values.get("kind") == "through-rod" else area))
+    values.setdefault("dead_volume_rod", 0.1 * bore * annulus)
     values.setdefault("retract_at", cycle / 2.0)
     values.setdefault("bearing_length", 0.5 * bore)
     mounting = values.get("mounting", "front flange")

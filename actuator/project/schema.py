@@ -12,6 +12,7 @@ from typing import Any
 from actuator.kinds import FieldSpec, Kind
 from actuator.parts import Actuator, Compressor, Machine, Money, Project, Site, Valve
 from actuator.project.fields import ALTERNATES, FAMILIES, FLAG_WORDS, FORMAT, PROCESS_FORCE, ROOT, fields
+from actuator.project.kind_rules import rules_by_kind
 from actuator.unit_table import DIMENSIONS
 
 
@@ -147,6 +148,8 @@ def _object(part: Any) -> dict[str, Any]:
     }
     if part is Valve:
         made["allOf"] = [_one_of_family(family) for family in FAMILIES]
+    if part is Actuator:
+        made["allOf"] = rules_by_kind()
     return made
 
 

@@ -20,6 +20,7 @@ _HEADERS = {
     "Actuator": "[[machine.actuator]]",
     "Load": "[machine.actuator.load]",
     "Friction": "[machine.actuator.friction]",
+    "Spring": "[machine.actuator.spring]",
     "Valve": "[machine.actuator.valve]",
     "Throttle": "[machine.actuator.throttle]",
     "Requirements": "[machine.actuator.require]",

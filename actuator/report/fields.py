@@ -49,6 +49,8 @@ def _below(part: Any, base: str) -> Iterator[tuple[FieldSpec, Any, str, str]]:
             continue
         if spec.part is None:
             yield spec, value, path, base
+        elif value is None:
+            continue
         elif not spec.is_list:
             yield from _below(value, path)
         else:
@@ -66,6 +68,8 @@ def _descend(part: Any, base: str, rest: str) -> Iterator[tuple[FieldSpec, Any, 
     value, path = getattr(part, spec.name), f"{base}.{step}"
     if spec.part is None:
         yield spec, value, path, base
+    elif value is None:
+        return
     elif not spec.is_list:
         yield from _descend(value, path, left)
     else:

@@ -87,6 +87,7 @@ def _actuator(at: At, histories: bool) -> Tree:
     for direction in ("extend", "retract"):
         tree[direction]["completed"] = completed(at, direction)
     tree["rod"]["rule"] = result.rod.rule
+    tree["indicator"]["direction"] = result.indicator.direction
     tree["indicator"]["remarks"] = list(result.indicator.remarks)
     if not isinstance(result.air, Refusal):
         tree["cycle"]["difference"] = result.air.difference

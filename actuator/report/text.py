@@ -38,8 +38,10 @@ def _actuator_heading(at: At, shown: Shown) -> list[str]:
             ("stroke", part.stroke, FIGURES["actuator"]["static.required_bore"].kind),
             ("cycle", machine.cycle_time, FIGURES["actuator"]["extend.stroke_time"].kind),
         )
+        if value > 0.0
     )
-    return [*_heading(f"{machine.name}: {part.name}", "="), *wrapped(f"{part.kind}, {sizes}", "", "")]
+    many = f"{part.count} in parallel, each " if part.count > 1 else ""
+    return [*_heading(f"{machine.name}: {part.name}", "="), *wrapped(f"{many}{part.kind}, {sizes}", "", "")]
 
 
 def _requirements(at: At, shown: Shown) -> list[str]:
@@ -87,7 +89,7 @@ def _paths(at: At, shown: Shown) -> list[str]:
     title = "Flow paths, valve and throttle"
     lines = ["", f"{title:<34}{'C':>14}{'b':>12}{'m':>12}{'fit error':>12}  unit of C"]
     lines.append("-" * len(lines[1]))
-    for path in flow.PATHS:
+    for path in (found.name for found in at.actuator.paths):
         cells = [cell(known[f"paths.{flow.slug(path)}.{name}"], at, shown) for name in names]
         c, b, m, error = (item.number for item in cells)
         lines.append(f"  {path:<32}{c:>14}{b:>12}{m:>12}{f'{error} {cells[3].unit}':>12}  {unit}")

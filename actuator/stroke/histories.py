@@ -155,7 +155,7 @@ def half_stroke(
     in_half = since_open <= lasts
     speeds = sign * past.speed
     reached = float(past.position.max() if sign > 0.0 else past.position.min())
-    peak_flow = float(past.flow_supply[in_half].max(initial=0.0))
+    peak_flow = float(past.flow_supply[in_half].max(initial=0.0)) if direction in actuator.air_ways else 0.0
 
     arrival = _arrival(log, sign)
     if arrival is None:
@@ -168,6 +168,8 @@ def half_stroke(
         else:
             whole = actuator.stroke * 1e3
             reason = f"the end is not reached: {way * 1e3:.4g} mm of {whole:.4g} mm before the {other} stroke"
+        if direction not in actuator.air_ways and not reason.startswith("the piston stands"):
+            reason += f"; the spring alone drives this way and leaves the piston at {reached * 1e3:.4g} mm"
         lost = Refusal(reason, f"{direction}.stroke_time")
         return HalfStroke(
             direction=direction,
@@ -233,7 +235,7 @@ def _standing_force(
         + par[at.SPRING_FORCE]
         + par[at.SPRING_RATE] * past.position
     )[order]
-    force = sign * push - actuator.friction.coulomb
+    force = sign * push - par[at.COULOMB]
     standing = (clock >= arrived - 1e-12) & (clock <= ends + 1e-12)
     if not standing.any():
         lost = Refusal("the valve is switched back before the arrival", field)

@@ -32,14 +32,18 @@ _PATHS = (
 
 
 def flow_paths(actuator: Actuator) -> tuple[Path, ...]:
-    """Valve and throttle in series for each port, connection and direction, in the kernel's order.
+    """Valve and throttle in series for each port of one cylinder, connection and direction, in the kernel's order.
 
     Meter-out: what leaves a chamber passes the needle, what enters passes the check valve; meter-in the other way.
+    A side that takes no air has no path.
     """
     valve, throttle = actuator.valve, actuator.throttle
     found = []
     fits: dict[tuple[tuple[float, float, float], ...], SeriesFit] = {}
+    sides = tuple(("cap" if way == "extend" else "rod") for way in actuator.air_ways)
     for name, side, inward in _PATHS:
+        if not name.startswith(sides):
+            continue
         own = (
             (valve.supply_c, valve.supply_b, valve.m)
             if side == "supply"
@@ -71,24 +75,24 @@ def flow_paths(actuator: Actuator) -> tuple[Path, ...]:
 
 
 def parameters(actuator: Actuator, machine: Machine, site: Site, paths: tuple[Path, ...]) -> list[float]:
-    """Row of the kernel's parameters, see :mod:`actuator.stroke.layout`."""
-    load, friction = actuator.load, actuator.friction
+    """Row of the kernel's parameters, see :mod:`actuator.stroke.layout`; of all cylinders in parallel together."""
+    load, friction, count = actuator.load, actuator.friction, float(actuator.count)
     par = [0.0] * at.N_PAR
-    par[at.AREA_CAP] = actuator.area_cap
-    par[at.AREA_ROD] = actuator.area_rod
-    par[at.BORE] = actuator.bore
+    par[at.AREA_CAP] = count * actuator.area_cap
+    par[at.AREA_ROD] = count * actuator.area_rod
+    par[at.BORE] = count * actuator.bore
     par[at.STROKE] = actuator.stroke
-    par[at.DEAD_CAP] = actuator.dead_volume_cap
-    par[at.DEAD_ROD] = actuator.dead_volume_rod
+    par[at.DEAD_CAP] = count * actuator.dead_volume_cap
+    par[at.DEAD_ROD] = count * actuator.dead_volume_rod
     par[at.MASS] = load.mass
     par[at.WEIGHT] = load.mass * GRAVITY * math.sin(load.inclination)
     par[at.GUIDE] = load.guide_friction * load.mass * GRAVITY * math.cos(load.inclination)
     par[at.CONSTANT] = load.constant_force
     par[at.EXTEND_FORCE] = load.extend_force
     par[at.RETRACT_FORCE] = load.retract_force
-    par[at.BREAKAWAY] = friction.breakaway
-    par[at.COULOMB] = friction.coulomb
-    par[at.VISCOUS] = friction.viscous
+    par[at.BREAKAWAY] = count * friction.breakaway
+    par[at.COULOMB] = count * friction.coulomb
+    par[at.VISCOUS] = count * friction.viscous
     par[at.STRIBECK] = friction.stribeck_speed
     par[at.P_LINE] = machine.supply_pressure
     par[at.P_EXTEND] = machine.supply_pressure
@@ -102,9 +106,16 @@ def parameters(actuator: Actuator, machine: Machine, site: Site, paths: tuple[Pa
     cut = actuator.cut_off * actuator.stroke
     par[at.CUT_EXTEND] = cut if actuator.cut_off < 1.0 else 2.0 * actuator.stroke
     par[at.CUT_RETRACT] = actuator.stroke - cut if actuator.cut_off < 1.0 else -actuator.stroke
-    for number, path in enumerate(paths):
-        place = at.CAP_FILL + 3 * number
-        par[place : place + 3] = [path.conductance, path.critical_ratio, path.subsonic_index]
+    if actuator.spring is not None:
+        returning = actuator.kind == "spring-return"
+        stands = -actuator.spring.preload if returning else actuator.spring.largest(actuator.stroke)
+        par[at.SPRING_FORCE] = count * stands
+        par[at.SPRING_RATE] = -count * actuator.spring.rate
+        par[at.VENTED_ROD if returning else at.VENTED_CAP] = 1.0
+    places = {name: at.CAP_FILL + 3 * number for number, (name, *_) in enumerate(_PATHS)}
+    for path in paths:
+        place = places[path.name]
+        par[place : place + 3] = [count * path.conductance, path.critical_ratio, path.subsonic_index]
     return par
 
 

@@ -180,7 +180,9 @@ def _actuator(part: Any, numbers: Iterator[float], stroke: StrokeResult | Refusa
         part=part,
         static=_filled(Static, numbers, force_reserve_retract=Refusal("no load")),
         rod=_filled(Rod, numbers, rule="Euler"),
-        indicator=_filled(Indicator, numbers, remarks=("an invented remark about the diagram",), **points),
+        indicator=_filled(
+            Indicator, numbers, direction="extend", remarks=("an invented remark about the diagram",), **points
+        ),
         paths=tuple(_filled(Path, numbers, name=name) for name in flow.PATHS),
         stroke=stroke,
         dynamics=stroke if isinstance(stroke, Refusal) else _dynamics(numbers),

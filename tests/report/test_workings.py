@@ -42,7 +42,7 @@ def test_origins_say_typed_default_or_computed() -> None:
     assert at + "return_pressure" not in found
     simulated = inputs(working(answer(), 0, 0, "extend.stroke_time"))
     value, origin = simulated[at + "friction.breakaway"]
-    assert origin == "default: 8 % of (p_s - p0)*A_cap, common practice, no source"
+    assert origin == "default: 8 % of (p_s - p0)*A_cap (spring-extend: A_rod), common practice, no source"
     # 8 % of 6 bar on π/4·(50 mm)² = 0.08 · 600 000 Pa · 1.9635e-3 m² = 94.25 N, by hand
     assert value == "94.25 N"
     assert simulated[at + "load.process_force.1.force"] == ("300.0 N", "typed")

@@ -14,6 +14,8 @@ RATIO = Kind(dimension="share", unit="1")
 """A share that may have either sign. [1]"""
 
 _AIR_INPUTS = (
+    "kind",
+    "count",
     "bore",
     "rod",
     "stroke",
@@ -132,7 +134,8 @@ AIR: tuple[Figure, ...] = (
         "cycle.textbook",
         VolumeANR,
         "Textbook air, ANR",
-        "V = (p_s·A₁ + p_r·A₂)·S/(R·T_s·ρ_dry(ANR)),  A₁ = π/4·D²,  A₂ = π/4·(D² − d²)",
+        "V = (p_s·A₁ + p_r·A₂)·S/(R·T_s·ρ_dry(ANR)),  A₁ = π/4·D²,  A₂ = π/4·(D² − d²), sides that take air,\n"
+        "times the number of cylinders; both A₂ with a through rod, both A₁ without a rod",
         name="textbook_anr",
         sources=("esposito", "iso8778"),
         inputs=_AIR_INPUTS,
@@ -142,7 +145,7 @@ AIR: tuple[Figure, ...] = (
         "cycle.settled",
         VolumeANR,
         "Settled air, ANR",
-        "V = Σ [p_s·(A·S + V_dead) − p₀·V_dead]/(R·T_s·ρ_dry(ANR)), both chambers",
+        "V = Σ [p_s·(A·S + V_dead) − p₀·V_dead]/(R·T_s·ρ_dry(ANR)), sides that take air",
         name="settled_anr",
         sources=("own", "iso8778"),
         inputs=(
@@ -220,7 +223,12 @@ _OF_WHICH: tuple[tuple[str, str, str, str], ...] = (
         "≈ Σ V_dead·(p_hi − p_lo)·ln(p_s/p₀)",
         "What filling and venting the dead volumes alone would take.",
     ),
-    ("stored_change", "Stored change", "A + ½·M·v² + M·g·x·sin α, end of the cycle less its start", ""),
+    (
+        "stored_change",
+        "Stored change",
+        "A + ½·M·v² + M·g·x·sin α + energy of the spring, end of the cycle less its start",
+        "",
+    ),
     ("lift_extend", "Lift, extending", "M·g·sin α·Δx while extending", ""),
     ("lift_retract", "Lift, retracting", "M·g·sin α·Δx while retracting", ""),
 )

@@ -21,7 +21,7 @@ from actuator.report.figures.cycle import RATIO
 from actuator.report.figures.registry import At, Direction, Figure, kind
 
 _PRESSURES = ("machine.supply_pressure", "site.ambient_pressure")
-_SIZES = ("bore", "rod")
+_SIZES = ("kind", "count", "bore", "rod")
 
 
 def _read(section: str, name: str) -> Callable[[At], float | Refusal]:
@@ -61,6 +61,7 @@ def _static(
 
 
 _LOAD_NOTE = "At its worst position; without inertia and without the cylinder's own friction."
+_WEAKEST = "A spring takes most at the end of the air stroke and gives least at the end of its own: that is shown."
 _RATIO_NOTE = "Common practice keeps it below 0.5 for fast strokes, 0.7 for slow ones, 0.85 to clamp."
 
 STATIC: tuple[Figure, ...] = (
@@ -68,19 +69,23 @@ STATIC: tuple[Figure, ...] = (
         "theoretical_extend",
         Force,
         "Theoretical force",
-        "F = (p_s − p₀)·π/4·D²",
-        inputs=("bore", *_PRESSURES),
+        "F = (p_s − p₀)·A₁,  A₁ = π/4·D², with a through rod π/4·(D² − d²), times the number of cylinders\n"
+        "spring-return: less F₀ + k·S, at the end of the stroke;  spring-extend: F = F₀",
+        inputs=(*_SIZES, "stroke", "spring", *_PRESSURES),
         direction="extend",
         sources=("esposito",),
+        note=_WEAKEST,
     ),
     _static(
         "theoretical_retract",
         Force,
         "Theoretical force",
-        "F = (p_r − p₀)·π/4·(D² − d²),  p_r = return pressure, else p_s",
-        inputs=(*_SIZES, "return_pressure", *_PRESSURES),
+        "F = (p_r − p₀)·A₂,  A₂ = π/4·(D² − d²), times the number of cylinders,  p_r = return pressure, else p_s\n"
+        "spring-extend: less F₀ + k·S, at the end of the stroke;  spring-return: F = F₀",
+        inputs=(*_SIZES, "stroke", "spring", "return_pressure", *_PRESSURES),
         direction="retract",
         sources=("esposito",),
+        note=_WEAKEST,
     ),
     _static(
         "load_extend",
@@ -119,7 +124,7 @@ STATIC: tuple[Figure, ...] = (
             RATIO,
             "Force reserve",
             "(theoretical force − F_c − opposing load)/opposing load",
-            inputs=("friction.coulomb",),
+            inputs=("count", "friction.coulomb"),
             uses=(f"static.load_{direction}", f"static.theoretical_{direction}"),
             direction=direction,
             note="At the load's worst position; refused where nothing opposes the motion.",
@@ -132,9 +137,13 @@ STATIC: tuple[Figure, ...] = (
         "Required bore",
         "D = √(4·A/π), A the larger of A_e = F_e·(1 + ρ)/[(p_s − p₀)·(1 − f)] and\n"
         "A_r = F_r·(1 + ρ)/[(p_r − p₀)·(1 − k²) − f·(p_s − p₀)];  f = F_c/(F of extending), k = d/D, "
-        "ρ the wanted reserve",
+        "ρ the wanted reserve, F_e and F_r the loads of one cylinder\n"
+        "single-acting: A = [F·(1 + ρ) + F_spring]/[(p_s − p₀)·(1 − k²)·(1 − f)], F_spring at the end of the air "
+        "stroke, k = 0 for spring-return;  through-rod: both sides with 1 − k²",
         inputs=(
             *_SIZES,
+            "stroke",
+            "spring",
             "return_pressure",
             "friction.coulomb",
             "load",
@@ -142,7 +151,7 @@ STATIC: tuple[Figure, ...] = (
             *_PRESSURES,
         ),
         uses=("static.load_extend", "static.load_retract"),
-        note="Running friction and rod in proportion to the bore; no reserve where none is asked.",
+        note="Running friction and rod in proportion to the bore, a spring as it is; no reserve where none is asked.",
     ),
 )
 
@@ -169,13 +178,20 @@ _COLUMN_FORMULA = (
 )
 
 ROD: tuple[Figure, ...] = (
+    _rod(
+        "largest_push",
+        Force,
+        "Largest push on a rod",
+        "F = (p_s − p₀)·A₁ of one cylinder;  spring-extend: F₀ + k·S",
+        inputs=("kind", "bore", "rod", "stroke", "spring", *_PRESSURES),
+    ),
     _rod("buckling_load", Force, "Buckling load", _COLUMN_FORMULA, inputs=_COLUMN),
     _rod(
         "buckling_safety",
         Number,
         "Buckling safety",
-        "buckling load/largest push,  largest push = (p_s − p₀)·A₁",
-        uses=("rod.buckling_load", "static.theoretical_extend"),
+        "buckling load/largest push",
+        uses=("rod.buckling_load", "rod.largest_push"),
         note="Common practice asks for 3.5 to 5.",
     ),
     _rod(
@@ -191,20 +207,26 @@ ROD: tuple[Figure, ...] = (
         "Longest stroke",
         "S at which buckling load = wanted safety × largest push, from the same two formulas",
         inputs=(*_COLUMN, "require.buckling_safety"),
-        uses=("static.theoretical_extend",),
+        uses=("rod.largest_push",),
         note="With a wanted safety of 4 where none is asked (common practice, no source).",
     ),
 )
 
 _DIAGRAM = (
+    "kind",
     "bore",
+    "rod",
     "stroke",
     "dead_volume_cap",
+    "dead_volume_rod",
     "cut_off",
     "machine.supply_pressure",
     "machine.supply_temperature",
     "site.ambient_pressure",
 )
+
+
+INDICATOR_GROUP = "Ideal indicator diagram"
 
 
 def _indicator(
@@ -222,7 +244,7 @@ def _indicator(
         key=f"indicator.{name}",
         kind=kind(alias),
         label=label,
-        group="Ideal indicator diagram, extending",
+        group=INDICATOR_GROUP,
         formula=formula,
         sources=("own", "eastop"),
         inputs=inputs,
@@ -241,7 +263,8 @@ INDICATOR: tuple[Figure, ...] = (
         "W = p_s·ε·V_s + p_s·V₁·L·exprel((1−n)·L) − p_b·(1−κ)·V_s + W_recompression,  L = ln(V₂/V₁)\n"
         "V₁ = (c + ε)·V_s,  V₂ = (c + 1)·V_s,  V₃ = (c + κ)·V_s,  exprel(z) = (eᶻ − 1)/z",
         inputs=(*_DIAGRAM, "polytropic_index"),
-        note="Admission, polytropic expansion, release, exhaust and recompression; out and back. Here "
+        note="Of the extending stroke, or of the retracting one where a spring drives the cylinder out. "
+        "Admission, polytropic expansion, release, exhaust and recompression; out and back. Here "
         "n = 1.4 or the polytropic index given, p_b = p₀, κ = 0 as with an ordinary valve.",
     ),
     _indicator(
@@ -249,7 +272,7 @@ INDICATOR: tuple[Figure, ...] = (
         PressureDifference,
         "Mean effective pressure",
         "W/V_s",
-        inputs=("bore", "stroke"),
+        inputs=("kind", "bore", "rod", "stroke"),
         uses=("indicator.work",),
     ),
     _indicator(

@@ -9,6 +9,8 @@ from actuator.kinds import AirMass, Energy, Force, MassFlow, Position, Speed, Ti
 from actuator.report.figures.registry import At, Direction, Figure, kind, of_stroke
 
 SIMULATION = (
+    "kind",
+    "count",
     "bore",
     "rod",
     "stroke",
@@ -22,6 +24,7 @@ SIMULATION = (
     "polytropic_index",
     "load",
     "friction",
+    "spring",
     "valve",
     "throttle",
     "machine.supply_pressure",
@@ -59,14 +62,14 @@ _ROWS: tuple[tuple[str, Any, str, str, str], ...] = (
         Time,
         "Force build-up time",
         "t_F = t(F_end ≥ force_at_end) − t(arrival)\n"
-        "F_end = ±(p₁·A₁ − p₂·A₂ − p₀·(A₁ − A₂) − M·g·sin α + F_const) − F_c, + extending, − retracting",
+        "F_end = ±(p₁·A₁ − p₂·A₂ − p₀·(A₁ − A₂) − M·g·sin α + F_const + F_spring) − F_c, + extending, − retracting",
         "Against a force of 0 where require.force_at_end is not given, and always when retracting.",
     ),
     (
         "force_at_end",
         Force,
         "Force at the end",
-        "F_end at the next command: ±(p₁·A₁ − p₂·A₂ − p₀·(A₁ − A₂) − M·g·sin α + F_const) − F_c",
+        "F_end at the next command: ±(p₁·A₁ − p₂·A₂ − p₀·(A₁ − A₂) − M·g·sin α + F_const + F_spring) − F_c",
         "What the load feels while the piston stands at the end, in the direction of the motion.",
     ),
     (
