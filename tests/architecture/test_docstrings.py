@@ -16,7 +16,9 @@ import pytest
 import actuator
 from actuator.sources import SOURCES, Source
 
-ROOMS = ("actuator.air", "actuator.flow", "actuator.mechanics", "actuator.energy", "actuator.stroke")
+ROOMS = (
+    "actuator.air", "actuator.flow", "actuator.mechanics", "actuator.energy", "actuator.holding", "actuator.stroke",
+)  # fmt: skip
 _SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻", "0123456789-")
 _WORDS = {"1", "degC", "m³ ANR", "m³/s ANR", "J/m³ ANR", "J/kg dry air", "kg/m³ dry air"}
 

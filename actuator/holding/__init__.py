@@ -1,0 +1,1 @@
+"""Holding: what a load does when air, signal or both are lost, from either end."""
