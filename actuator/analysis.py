@@ -3,8 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import replace
-from typing import Any
 
 import numpy as np
 
@@ -56,7 +54,6 @@ __all__ = [
 
 
 def never() -> bool:
-    "varied_result",
     """Tell that nobody asked to stop."""
     return False
 
@@ -159,6 +156,8 @@ def _actuator(
     actuator: Actuator, machine: Machine, project: Project, supply: Supply | Refusal, stroke: StrokeResult | Refusal
 ) -> ActuatorResult:
     site = project.site
+    static = static_forces(actuator, machine, site)
+    rod = rod_column(actuator, machine, site)
     paths = flow_paths(actuator)
     par = np.array(parameters(actuator, machine, site, paths))
     air = air_of(actuator, machine, site, stroke) if isinstance(stroke, StrokeResult) else stroke
