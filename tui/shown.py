@@ -15,16 +15,14 @@ from actuator.unit_table import System
 from actuator.units import Reading, scale
 from tui.tables import Row, Section
 
-CYLINDER_GROUPS = ("Static force", "Rod", "Ideal indicator diagram", "Air of a cycle")
-STROKE_GROUPS = ("Motion",)
-LEDGER, OF_WHICH, LOSS = "Exergy of a cycle", "Of which (not summed)", "Exhaust loss"
-UPSTREAM, DEMAND, MONEY, SUPPLY = (
-    "From the meter to the port",
-    "Air demand",
-    "Money and carbon",
-    "Compressed air",
-)
+LEDGER, SHARES, MONEY = "Exergy of a cycle", "Shares of the supplied exergy", "Money and carbon"
+STROKE_GROUPS = ("Motion", "Worst-case pair", "Of which", "Exhaust loss")
+"""Beginnings of the headings that stand in the workspace Stroke, in this order; all others in Cylinder."""
 
+
+CYLINDER_GROUPS = ("Static force", "Rod", "Ideal indicator diagram", "Air of a cycle", "From the meter")
+"""Beginnings of the headings that come first in Cylinder; the actuator's others come after the money."""
+LEVELS: tuple[Level, ...] = ("actuator", "machine", "project")
 SIGNS = {"met": "✓", "failed": "✗", "refused": "?"}
 """Signs of a verdict, so that no colour is needed."""
 
@@ -96,19 +94,31 @@ def in_effect(view: View) -> dict[str, str]:
 
 
 def cylinder_sections(view: View) -> tuple[Section, ...]:
-    """Sections of the Cylinder workspace."""
-    sections = [_requirements(view)]
-    sections += [_group(view, "actuator", title) for title in CYLINDER_GROUPS]
-    sections += [_group(view, "machine", DEMAND), _money(view)]
-    sections += [_group(view, "actuator", UPSTREAM), _group(view, "project", SUPPLY), _remarks(view)]
+    """Sections of the Cylinder workspace: all groups of the registry that Stroke does not show."""
+    elsewhere = {LEDGER, SHARES, MONEY, *_stroke_groups()}
+    own, machine, project = (
+        [_group(view, level, title) for title in _titles(level) if title not in elsewhere] for level in LEVELS
+    )
+    first = [item for begin in CYLINDER_GROUPS for item in own if item.title.startswith(begin)]
+    rest = [item for item in own if item not in first]
+    sections = [_requirements(view), *first, *machine, _money(view), *project, *rest, _remarks(view)]
     return tuple(section for section in sections if section.rows)
 
 
 def stroke_sections(view: View) -> tuple[Section, ...]:
-    """Sections of the Stroke workspace: half strokes, and what does not belong to the ledger's bars."""
-    sections = [_group(view, "actuator", title) for title in STROKE_GROUPS]
-    sections += [_group(view, "actuator", OF_WHICH), _group(view, "actuator", LOSS)]
+    """Sections of the Stroke workspace, without the ledger."""
+    sections = [_group(view, "actuator", title) for title in _stroke_groups()]
     return tuple(section for section in sections if section.rows)
+
+
+def _titles(level: Level) -> list[str]:
+    """Headings of a level, in the order of the registry."""
+    return list(dict.fromkeys(figure.group for figure in FIGURES[level].values()))
+
+
+def _stroke_groups() -> list[str]:
+    titles = _titles("actuator")
+    return [title for begin in STROKE_GROUPS for title in titles if title.startswith(begin)]
 
 
 def ledger_sections(view: View) -> tuple[Section, ...]:
@@ -222,8 +232,7 @@ def _money(view: View) -> Section:
     """Energy, money and carbon a year: of this actuator, of the machines of its kind, of all."""
     rows = []
     for figure in _of_group("actuator", MONEY):
-        levels: tuple[Level, ...] = ("actuator", "machine", "project")
-        same = [FIGURES[level][figure.key] for level in levels if figure.key in FIGURES[level]]
+        same = [FIGURES[level][figure.key] for level in LEVELS if figure.key in FIGURES[level]]
         made = [row for row in (_row(view, (item,)) for item in same) if row is not None]
         if len(made) != len(same):
             continue

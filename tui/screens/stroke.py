@@ -26,6 +26,10 @@ LEAST = 21
 class Stroke(VerticalScroll, can_focus=False):
     """Plots over time to the left, p-V loops to the right; below each other where it is narrow."""
 
+    def __init__(self, *, id: str | None = None) -> None:
+        super().__init__(id=id)
+        self._shown: tuple[View, Glyphs] | None = None
+
     def compose(self) -> ComposeResult:
         """Five plots, the ledger, the tables."""
         with Container(id="stroke-plots"):
@@ -50,6 +54,9 @@ class Stroke(VerticalScroll, can_focus=False):
 
     def show(self, view: View, glyphs: Glyphs) -> None:
         """Show the cycle of an answer."""
+        if (view, glyphs) == self._shown:
+            return
+        self._shown = (view, glyphs)
         from actuator.errors import Refusal
         from tui.pictures import pictures, span
         from tui.shown import ledger_sections, stroke_sections

@@ -62,6 +62,8 @@ class Field(Input):
         super().__init__(text, select_on_focus=False)
         self.spec = spec
         self._holds = ""
+        self._state: tuple[object, ...] | None = None
+        self._rows: list[Strip] = []
 
     def on_mount(self) -> None:
         """Lay out for the first time."""
@@ -120,29 +122,40 @@ class Field(Input):
 
     def render_lines(self, crop: Region) -> list[Strip]:
         """Label, the input's own line, a mark for choices, then the problem."""
-        width, left = self.outer_size.width, self.label_width + 2
-        plain = self.rich_style
-        label = self.get_component_rich_style("field--label")
-        bad = self.get_component_rich_style("field--problem")
-        middle = super().render_lines(Region(0, 0, width, 1))[0].crop(left, width - 2)
-        sign = "!" if self.problem else "›" if self.has_focus else " "
-        text = self.spec.label
-        if len(text) > self.label_width:
-            text = text[: self.label_width - 1] + "…"
-        tail = " ▾" if self.spec.choices else "  "
-        head = Strip(
-            [
-                Segment(sign, bad if self.problem else label),
-                Segment(text.ljust(self.label_width) + " ", label),
-            ]
+        state = (
+            (self.value, self.placeholder, self.selection, self.scroll_offset.x, self._cursor_visible),
+            (self.has_focus, self.mouse_hover, self.problem, self.label_width, self.outer_size, self.spec),
         )
-        rows = [Strip.join([head, middle, Strip([Segment(tail, label)])])]
+        if state != self._state:
+            text = super().render_lines(Region(0, 0, self.outer_size.width, 1))[0]
+            self._state, self._rows = state, self._drawn(text)
+        blank = crop.bottom - len(self._rows)
+        rows = self._rows + [Strip.blank(self.outer_size.width, self.rich_style)] * blank if blank > 0 else self._rows
+        whole = crop.x <= 0 and crop.right >= self.outer_size.width
+        rows = rows[crop.y : crop.bottom]
+        return rows if whole else [row.crop(crop.x, crop.right) for row in rows]
+
+    def _drawn(self, text: Strip) -> list[Strip]:
+        """All rows, whole."""
+        width, left = self.outer_size.width, self.label_width + 2
+        plain = self.get_component_rich_style("field--label")
+        bad = self.get_component_rich_style("field--problem")
+        sign = "!" if self.problem else "›" if self.has_focus else " "
+        label = self.spec.label
+        if len(label) > self.label_width:
+            label = label[: self.label_width - 1] + "…"
+        head = [Segment(sign, bad if self.problem else plain), Segment(label.ljust(self.label_width) + " ", plain)]
+        tail = [Segment(" ▾" if self.spec.choices else "  ", plain)]
+        rows = [Strip.join([Strip(head), text.crop(left, width - 2), Strip(tail)])]
         for number, line in enumerate(self._told()):
             start = "  └ " if number == 0 else "    "
             rows.append(Strip([Segment((start + line)[:width].ljust(width), bad)]))
-        blank = Strip.blank(width, plain)
-        rows += [blank] * max(0, crop.bottom - len(rows))
-        return [row.crop(crop.x, crop.right) for row in rows[crop.y : crop.bottom]]
+        return rows
+
+    def notify_style_update(self) -> None:
+        """Take the colours of another theme."""
+        super().notify_style_update()
+        self._state = None
 
     def action_step(self, by: int) -> None:
         """Go to the field above or below."""

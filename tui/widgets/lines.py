@@ -160,8 +160,15 @@ def _row_lines(row: Row, shape: _Shape, width: int, plain: bool) -> list[Line]:
         label = " " + row.label.ljust(room)
         lines.append(Line(((label, BODY), (numbers[len(label) + len(numbers) - width :], NUMBER)), row.name))
     else:
-        lines.append(Line(((_fit(" " + row.label, width), BODY),), row.name))
-        lines.append(Line(((numbers.rjust(width)[-width:], NUMBER),), row.name))
+        *above, last = wrap(row.label, max(width - 2, 10), break_on_hyphens=False)
+        lines += [Line(((f" {part}".ljust(width), BODY),), row.name) for part in above]
+        if above and len(last) + 2 + len(numbers.lstrip()) <= width:
+            lines.append(
+                Line(((f" {last}".ljust(width - len(numbers.lstrip())), BODY), (numbers.lstrip(), NUMBER)), row.name)
+            )
+        else:
+            lines.append(Line(((f" {last}".ljust(width), BODY),), row.name))
+            lines.append(Line(((numbers.rjust(width)[-width:], NUMBER),), row.name))
     if row.share is not None and barred < BAR_LEAST:
         lines.append(Line((("   " + bar(row.share, width - 4, plain) + " ", BAR),), row.name))
     if row.changes:

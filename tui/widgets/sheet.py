@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Mapping
 from typing import TYPE_CHECKING
 
 from textual import events
@@ -18,8 +18,8 @@ from tui.widgets.field import Field
 if TYPE_CHECKING:
     from tui.session import Session
 
-FIRST = ("Machine", "Actuator", "Load", "Friction", "Valve", "Throttle", "Requirements")
-"""Groups that are edited most; the rest follows in the schema's order."""
+LAST = ("Site", "Compressor", "Money")
+"""Groups that are edited least; all others stand before them, the machine first."""
 AT_ONCE = 2
 """Groups that are built before the first paint. [1]"""
 LABELS = 22
@@ -28,9 +28,8 @@ LABELS = 22
 
 def groups_of(machine: int, actuator: int) -> list[SheetGroup]:
     """Groups of one actuator (numbers from 1) in the sheet's order."""
-    groups = {group.title: group for group in sheet(machine, actuator)}
-    first = [groups.pop(title) for title in FIRST if title in groups]
-    return [*first, *groups.values()]
+    groups = sheet(machine, actuator)
+    return sorted(groups, key=lambda group: (group.title in LAST, group.title != "Machine"))
 
 
 class Group(Vertical):
@@ -64,6 +63,7 @@ class Sheet(VerticalScroll, can_focus=False):
         self._session = session
         self._place = place
         self._problems: tuple[Problem, ...] = ()
+        self._fields: list[Field] = []
         self.every = False
 
     def compose(self) -> ComposeResult:
@@ -81,9 +81,9 @@ class Sheet(VerticalScroll, can_focus=False):
         """Cells for labels in a sheet of that width. [1]"""
         return max(12, min(LABELS, width - 19))
 
-    def fields(self) -> Iterator[Field]:
+    def fields(self) -> list[Field]:
         """All fields that are built."""
-        yield from self.query(Field)
+        return self._fields or list(self.query(Field))
 
     def field(self, path: str) -> Field | None:
         """The field of a path, where this actuator's sheet has it."""
@@ -137,7 +137,8 @@ class Sheet(VerticalScroll, can_focus=False):
 
     def complete(self) -> None:
         """Catch up after the later groups are built."""
-        for field in self.fields():
+        self._fields = list(self.query(Field))
+        for field in self._fields:
             field.label_width = self.label_width(self.size.width)
         self.show(self._session, self._place)
         self.mark(self._problems)
