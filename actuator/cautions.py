@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterator
 from dataclasses import dataclass
 
-from actuator.air.gas import GAMMA, GRAVITY
+from actuator.air.gas import GAMMA
 from actuator.errors import Refusal
+from actuator.holding import words
+from actuator.holding.held import Held
 from actuator.mechanics.sag import extended_rod
 from actuator.parts import Actuator, Machine, Site
 from actuator.sources import ISO_4414, OSHA_1910, OWN, PCC_2, PRACTICE, Source
@@ -61,28 +62,10 @@ def _caution(path: str, text: str, source: Source) -> Caution:
     return Caution(path=path, text=f"{text} {DECIDE}", source=str(source))
 
 
-def _weight(actuator: Actuator) -> Iterator[Caution]:
-    """A load on a slope, with nothing in the document that locks it."""
-    load = actuator.load
-    pull = load.mass * GRAVITY * math.sin(load.inclination)
-    if pull == 0.0:
-        return
-    way = "retracts" if pull > 0.0 else "extends"
-    held = actuator.count * actuator.friction.breakaway + load.guide_friction * load.mass * GRAVITY * math.cos(
-        load.inclination
-    )
-    friction = (
-        "The friction given would hold it, but friction is no lock: wear, oil and vibration lower it."
-        if abs(pull) <= held
-        else "The friction given does not hold it."
-    )
-    yield _caution(
-        "load.inclination",
-        f"The weight pulls along the stroke with {abs(pull):.4g} N and {way} the piston when air or "
-        f"signal is lost; no rod lock, check valve or counterweight is part of this calculation. {friction} "
-        "Secure a raised load before anyone reaches under it.",
-        ISO_4414,
-    )
+def _held(actuator: Actuator, held: tuple[Held, ...]) -> Iterator[Caution]:
+    """A load that can fall, and air that stays closed in."""
+    for path, text in (*words.weight(actuator, held), *words.closed_in(held)):
+        yield _caution(path, text, ISO_4414)
 
 
 def _loss(actuator: Actuator) -> Iterator[Caution]:
@@ -287,7 +270,13 @@ def _motion(stroke: StrokeResult | Refusal) -> Iterator[Caution]:
             )
 
 
-def cautions(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeResult | Refusal) -> tuple[Caution, ...]:
+def cautions(
+    actuator: Actuator,
+    machine: Machine,
+    site: Site,
+    stroke: StrokeResult | Refusal,
+    held: tuple[Held, ...] = (),
+) -> tuple[Caution, ...]:
     """Cautions that go with one actuator's results.
 
     Parameters
@@ -298,6 +287,8 @@ def cautions(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeRes
     site : Site
     stroke : StrokeResult or Refusal
         Its simulated cycle.
+    held : tuple of Held, optional
+        What happens when supply or signal is lost.
 
     Returns
     -------
@@ -305,7 +296,7 @@ def cautions(actuator: Actuator, machine: Machine, site: Site, stroke: StrokeRes
         The gravest first.
     """
     return (
-        *_weight(actuator),
+        *_held(actuator, held),
         *_loss(actuator),
         *_spring(actuator),
         *_first_stroke(actuator, stroke),

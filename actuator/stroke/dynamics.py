@@ -129,7 +129,13 @@ def _falls_to(level: float, clock: Array, force: Array, field: str) -> float | R
 
 
 def _half(
-    sign: float, actuator: Actuator, machine: Machine, stroke: StrokeResult, frequency: Array, push: Array
+    sign: float,
+    actuator: Actuator,
+    machine: Machine,
+    stroke: StrokeResult,
+    frequency: Array,
+    push: Array,
+    coulomb: float,
 ) -> HalfDynamics:
     direction = "extend" if sign > 0.0 else "retract"
     command, counter = actuator.extend_at, actuator.retract_at
@@ -149,7 +155,7 @@ def _half(
     return HalfDynamics(
         natural_frequency=float(frequency[moving].min()) if moving.any() else still,
         peak_deceleration=float(deceleration.max(initial=0.0)) if moving.any() else still,
-        release_time=_falls_to(actuator.friction.coulomb, clock, against, f"{direction}.release_time"),
+        release_time=_falls_to(coulomb, clock, against, f"{direction}.release_time"),
         unloaded_time=_falls_to(0.0, clock, against, f"{direction}.unloaded_time"),
     )
 
@@ -181,5 +187,6 @@ def dynamics(actuator: Actuator, machine: Machine, stroke: StrokeResult, par: Ar
         index=actuator.polytropic_index or GAMMA,
         spring_rate=-par[at.SPRING_RATE],
     )
-    extend, retract = (_half(sign, actuator, machine, stroke, frequency, push) for sign in (1.0, -1.0))
+    coulomb = float(par[at.COULOMB])
+    extend, retract = (_half(sign, actuator, machine, stroke, frequency, push, coulomb) for sign in (1.0, -1.0))
     return Dynamics(extend=extend, retract=retract, force=push)
