@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from dataclasses import replace
+from typing import Any
 
 import numpy as np
 
@@ -26,10 +28,13 @@ from actuator.results import (
     Rod,
     Static,
     Supply,
+    WorstPair,
 )
+from actuator.scatter.hazards import hazards
+from actuator.scatter.pair import worst_pair
 from actuator.statics import rod_column, static_forces
 from actuator.stroke.dynamics import dynamics
-from actuator.stroke.result import StrokeResult
+from actuator.stroke.result import Path, StrokeResult
 from actuator.stroke.rows import parameters
 from actuator.stroke.simulate import flow_paths, simulate
 
@@ -47,9 +52,11 @@ __all__ = [
     "Rod",
     "Static",
     "Supply",
+    "WorstPair",
     "YearlyCost",
     "analyse",
     "never",
+    "varied_result",
 ]
 
 
@@ -137,34 +144,27 @@ def _same_motion(machine: Machine, other: Machine) -> bool:
     )
 
 
-def _known_strokes(
-    project: Project, machine: Machine, previous: Analysis | None
-) -> list[tuple[Actuator, StrokeResult]]:
-    """Strokes of an earlier analysis that were simulated for this machine's supply, cycle and site."""
+def _known(project: Project, machine: Machine, previous: Analysis | None) -> list[ActuatorResult]:
+    """Results of an earlier analysis with this machine's supply and cycle, at this site."""
     if previous is None or previous.project.site != project.site:
         return []
-    return [
-        (result.part, result.stroke)
-        for old in previous.machines
-        if _same_motion(machine, old.part)
-        for result in old.actuators
-        if isinstance(result.stroke, StrokeResult)
-    ]
+    return [result for old in previous.machines if _same_motion(machine, old.part) for result in old.actuators]
 
 
 def _actuator(
-    actuator: Actuator, machine: Machine, project: Project, supply: Supply | Refusal, stroke: StrokeResult | Refusal
+    actuator: Actuator,
+    machine: Machine,
+    project: Project,
+    supply: Supply | Refusal,
+    *,
+    stroke: StrokeResult | Refusal,
+    worst: WorstPair | Refusal,
 ) -> ActuatorResult:
     site = project.site
-    static = static_forces(actuator, machine, site)
-    rod = rod_column(actuator, machine, site)
     paths = flow_paths(actuator)
-    par = np.array(parameters(actuator, machine, site, paths))
-    air = air_of(actuator, machine, site, stroke) if isinstance(stroke, StrokeResult) else stroke
     return ActuatorResult(
         part=actuator,
-        static=static,
-        rod=rod,
+        **_scattering(actuator, machine, project, supply, stroke, paths),
         indicator=ideal_indicator(
             actuator,
             p_supply=machine.supply_pressure,
@@ -173,14 +173,74 @@ def _actuator(
             temp_ambient=site.ambient_temperature,
         ),
         paths=paths,
-        stroke=stroke,
-        dynamics=dynamics(actuator, machine, stroke, par) if isinstance(stroke, StrokeResult) else stroke,
-        air=air,
-        cost=_cost(air if isinstance(air, Refusal) else air.air_drawn, machine, project, supply),
-        criteria=judge(actuator, static, rod, stroke),
-        cautions=cautions(actuator, machine, site, stroke),
+        worst=worst,
+        cautions=(*cautions(actuator, machine, site, stroke), *hazards(stroke, worst)),
         remarks=stroke.remarks if isinstance(stroke, StrokeResult) else (),
     )
+
+
+def _scattering(
+    actuator: Actuator,
+    machine: Machine,
+    project: Project,
+    supply: Supply | Refusal,
+    stroke: StrokeResult | Refusal,
+    paths: tuple[Path, ...],
+) -> dict[str, Any]:
+    """Sections of a result that cost next to nothing beside the stroke: those that tolerance bands are made of."""
+    site = project.site
+    static = static_forces(actuator, machine, site)
+    rod = rod_column(actuator, machine, site)
+    par = np.array(parameters(actuator, machine, site, paths))
+    air = air_of(actuator, machine, site, stroke) if isinstance(stroke, StrokeResult) else stroke
+    return {
+        "static": static,
+        "rod": rod,
+        "stroke": stroke,
+        "dynamics": dynamics(actuator, machine, stroke, par) if isinstance(stroke, StrokeResult) else stroke,
+        "air": air,
+        "cost": _cost(air if isinstance(air, Refusal) else air.air_drawn, machine, project, supply),
+        "criteria": judge(actuator, static, rod, stroke),
+    }
+
+
+def varied_result(
+    nominal: ActuatorResult,
+    actuator: Actuator,
+    machine: Machine,
+    project: Project,
+    supply: Supply | Refusal,
+    *,
+    stroke: StrokeResult | Refusal,
+    paths: tuple[Path, ...],
+) -> ActuatorResult:
+    """Result of an actuator that differs a little from another, for tolerance bands.
+
+    Parameters
+    ----------
+    nominal : ActuatorResult
+        Of the other.
+    actuator, machine, project : part
+    supply : Supply or Refusal
+        Energy of the air.
+    stroke : StrokeResult or Refusal
+        Cycle of the varied actuator.
+    paths : tuple of Path
+        Its flow paths.
+
+    Returns
+    -------
+    ActuatorResult
+        Forces, rod, motion, air, cost and criteria of the varied one; ideal diagram, worst-case pair and cautions
+        stay those of the nominal one.
+    """
+    own = _scattering(actuator, machine, project, supply, stroke, paths)
+    return replace(nominal, part=actuator, paths=paths, **own)
+
+
+def _corner(actuator: Actuator, machine: Machine, site: Site) -> StrokeResult | Refusal:
+    """Cycle at a corner of the spread; its ledger is not asked for."""
+    return simulate(actuator, machine, site, ledger=False)
 
 
 def _cost(
@@ -265,15 +325,15 @@ def analyse(project: Project, previous: Analysis | None = None, cancelled: Calla
         )
     machines = []
     for machine in project.machines:
-        known = _known_strokes(project, machine, previous)
+        known = _known(project, machine, previous)
         results = []
         for actuator in machine.actuators:
             if cancelled():
                 raise Cancelled("cancelled")
-            stroke = next((old for part, old in known if part == actuator), None)
-            results.append(
-                _actuator(actuator, machine, project, supply, stroke or simulate(actuator, machine, project.site))
-            )
+            old = next((item for item in known if item.part == actuator), None)
+            stroke = old.stroke if old is not None else simulate(actuator, machine, project.site)
+            worst = old.worst if old is not None else worst_pair(actuator, machine, project.site, _corner)
+            results.append(_actuator(actuator, machine, project, supply, stroke=stroke, worst=worst))
         machines.append(_machine(machine, project, supply, tuple(results)))
     costs = [item.cost for item in machines]
     lost = next((item for item in costs if isinstance(item, Refusal)), None)

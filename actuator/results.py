@@ -10,7 +10,7 @@ from actuator.energy.indicator import Indicator
 from actuator.errors import Refusal
 from actuator.parts import Actuator, Machine, Project
 from actuator.stroke.dynamics import Dynamics
-from actuator.stroke.result import Path, StrokeResult
+from actuator.stroke.result import HalfStroke, Path, StrokeResult
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -93,6 +93,35 @@ class Criterion:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class WorstCase:
+    """Half strokes at the corner of the spread that is slowest, or hardest, each way, and what goes with them."""
+
+    extend: HalfStroke | Refusal
+    retract: HalfStroke | Refusal
+    mass_extend: float | Refusal
+    """Moved mass at that corner, extending. [kg]"""
+    mass_retract: float | Refusal
+    """The same retracting. [kg]"""
+    force_reserve_extend: float | Refusal
+    """(theoretical - running friction - load)/load at the corner for extending. [1]"""
+    force_reserve_retract: float | Refusal
+    buckling_safety: float | Refusal
+    """Buckling load over the largest push at the corner for extending. [1]"""
+    air_drawn: float | Refusal
+    """Air of both half strokes, each at its corner. [kg]"""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
+class WorstPair:
+    """Both ends of what the spread allows."""
+
+    slow: WorstCase
+    """Lowest pressure and conductance, most friction and load, longest delay: judge times and forces here."""
+    hard: WorstCase
+    """Highest pressure and conductance, least friction and load, shortest delay: impact, buckling and air."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True, eq=False)
 class ActuatorResult:
     """Everything about one actuator."""
 
@@ -106,6 +135,7 @@ class ActuatorResult:
     air: Air | Refusal
     cost: YearlyCost | Refusal
     """Of one machine's actuator, a year."""
+    worst: WorstPair | Refusal
     criteria: tuple[Criterion, ...]
     cautions: tuple[Caution, ...]
     remarks: tuple[str, ...]

@@ -16,7 +16,7 @@ class Spread:
         PressureDeviation,
         Entry(
             "Supply pressure",
-            "Largest deviation of the supply pressure, up or down; a return pressure moves with it.",
+            "Largest deviation of the supply pressure, either way; a return pressure moves in proportion.",
             default="0.3 bar, common practice, no source",
             example="0.3 bar",
         ),

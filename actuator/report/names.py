@@ -30,6 +30,18 @@ class Named:
         owners = (tuple(join((owner,)) for owner in self.at.owner), self.at.owner)
         return tuple(dict.fromkeys(".".join((*owner, ending)) for owner in owners for ending in endings))
 
+    @property
+    def beginnings(self) -> tuple[str, ...]:
+        """Tails of the spellings that begin with an owner or with the figure's own first step."""
+        endings = (self.figure.key, ".".join(self.figure.json_path))
+        owners = (tuple(join((owner,)) for owner in self.at.owner), self.at.owner)
+        return tuple(
+            ".".join((*owner[first:], ending))
+            for owner in owners
+            for first in range(1, len(owner) + 1)
+            for ending in endings
+        )
+
 
 def places(analysis: Analysis) -> Iterator[At]:
     """Every place that has figures: each actuator, then its machine, then the project."""
@@ -66,6 +78,9 @@ class NotFound:
 def find(analysis: Analysis, name: str) -> Named | NotFound:
     """Figure of a full name or of any tail of it that no other figure has.
 
+    A tail that begins with an owner or a figure's first step goes before those that begin inside a key:
+    ``extend.stroke_time`` is the nominal one, not that of ``worst.slow.extend.stroke_time``.
+
     Parameters
     ----------
     analysis : Analysis
@@ -78,7 +93,11 @@ def find(analysis: Analysis, name: str) -> Named | NotFound:
     """
     every = list(all_figures(analysis))
     whole = [item for item in every if name in item.spellings]
-    tails = whole or [item for item in every if any(spelling.endswith("." + name) for spelling in item.spellings)]
+    tails = (
+        whole
+        or [item for item in every if name in item.beginnings]
+        or [item for item in every if any(spelling.endswith("." + name) for spelling in item.spellings)]
+    )
     if len(tails) == 1:
         return tails[0]
     if tails:

@@ -108,7 +108,7 @@ def _remarks(figure: Figure, at: At) -> Iterator[str]:
         yield from result.indicator.remarks
     if figure.group == "Rod" and "shigley" in figure.sources and result.rod.rule:
         yield f"Rule used: {result.rod.rule}."
-    if figure.simulated and not isinstance(result.stroke, Refusal):
+    if figure.simulated and not figure.key.startswith("worst.") and not isinstance(result.stroke, Refusal):
         yield from result.stroke.remarks
 
 

@@ -29,6 +29,8 @@ from actuator.results import (
     Rod,
     Static,
     Supply,
+    WorstCase,
+    WorstPair,
 )
 from actuator.stroke.dynamics import Dynamics, HalfDynamics
 from actuator.stroke.result import HalfStroke, Ledger, Path, StrokeResult
@@ -174,6 +176,20 @@ def _criteria(part: Any) -> tuple[Criterion, ...]:
     )
 
 
+def _worst(numbers: Iterator[float]) -> WorstPair:
+    slow, hard = (
+        _filled(
+            WorstCase,
+            numbers,
+            extend=_half("extend", numbers, True),
+            retract=_half("retract", numbers, True),
+            force_reserve_retract=Refusal("no load"),
+        )
+        for _ in range(2)
+    )
+    return WorstPair(slow=slow, hard=hard)
+
+
 def _actuator(part: Any, numbers: Iterator[float], stroke: StrokeResult | Refusal) -> ActuatorResult:
     points = dict.fromkeys(("volume", "pressure", "volume_retract", "pressure_retract"), (1.0, 2.0))
     return ActuatorResult(
@@ -188,6 +204,7 @@ def _actuator(part: Any, numbers: Iterator[float], stroke: StrokeResult | Refusa
         dynamics=stroke if isinstance(stroke, Refusal) else _dynamics(numbers),
         air=stroke if isinstance(stroke, Refusal) else _filled(Air, numbers, difference="an invented reason"),
         cost=stroke if isinstance(stroke, Refusal) else _filled(YearlyCost, numbers),
+        worst=stroke if isinstance(stroke, Refusal) else _worst(numbers),
         criteria=_criteria(part),
         cautions=(Caution(path="load.inclination", text="an invented caution", source="nobody"),),
         remarks=("an invented remark",),

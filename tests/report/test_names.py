@@ -26,6 +26,8 @@ def _analysis() -> Analysis:
         ("Pusher.cycle.exergy_J.friction", '"Press, left".Pusher.cycle.exergy.friction'),
         ('"Lift.1".cycle.exergy.friction', '"Press, left"."Lift.1".cycle.exergy.friction'),
         ("Lift.1.cycle.exergy.friction", '"Press, left"."Lift.1".cycle.exergy.friction'),
+        ("Pusher.worst.slow.extend.stroke_time", '"Press, left".Pusher.worst.slow.extend.stroke_time'),
+        ("Pusher.worst.hard.retract.end_energy_J", '"Press, left".Pusher.worst.hard.retract.end_energy'),
         ("demand.mean", '"Press, left".demand.mean'),
         ("mean", '"Press, left".demand.mean'),
         ("money.cost_year", "money.cost_year"),

@@ -1,11 +1,18 @@
 """One registry of figures: everything that JSON, text, CSV, screen and workings show comes from it."""
 
-from actuator.report.figures import beam, cycle, dynamics, flow, forces, money, motion
+from actuator.report.figures import beam, cycle, dynamics, flow, forces, money, motion, worst
 from actuator.report.figures.motion import completed
 from actuator.report.figures.registry import At, Direction, Figure, Level, si_unit
 
 ACTUATOR_FIGURES: tuple[Figure, ...] = (
-    motion.FIGURES + dynamics.FIGURES + cycle.FIGURES + money.ACTUATOR + forces.FIGURES + beam.FIGURES + flow.FIGURES
+    motion.FIGURES
+    + dynamics.FIGURES
+    + worst.FIGURES
+    + cycle.FIGURES
+    + money.ACTUATOR
+    + forces.FIGURES
+    + beam.FIGURES
+    + flow.FIGURES
 )
 MACHINE_FIGURES: tuple[Figure, ...] = money.MACHINE
 PROJECT_FIGURES: tuple[Figure, ...] = money.PROJECT

@@ -120,7 +120,8 @@ class Figure:
         """Key without its direction: figures of both directions share a row."""
         if not self.direction:
             return self.key
-        return self.key.removeprefix(self.direction + ".").removesuffix("_" + self.direction)
+        below = self.key.replace(f".{self.direction}.", ".")
+        return below.removeprefix(self.direction + ".").removesuffix("_" + self.direction)
 
     @property
     def json_path(self) -> tuple[str, ...]:

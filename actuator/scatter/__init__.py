@@ -1,0 +1,1 @@
+"""What happens when supply, friction, load, flow and valve lie off their values: worst cases, bands, sensitivity."""
