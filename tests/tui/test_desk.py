@@ -364,7 +364,8 @@ async def test_units_turn_and_what_was_typed_stays() -> None:
     app = Quick(one())
     async with app.run_test(size=(160, 50)) as pilot:
         await settled(app, pilot)
-        assert shows(app, " N ", "kWh/year")
+        assert shows(app, "Theoretical force")
+        assert not shows(app, "lbf")
         await pilot.press("ctrl+t")
         await pilot.pause()
         assert shows(app, "lbf")
