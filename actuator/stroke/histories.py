@@ -33,14 +33,28 @@ class Histories:
     flow_exhaust: Array
 
 
-def _cubic(left: Array, right: Array, rate_left: Array, rate_right: Array, h: Array) -> tuple[Array, Array]:
-    """Values and rates of the cubics through both ends of each step; one axis more, of length 3, than the ends."""
-    z = _BETWEEN
-    a, b, h = left[..., None], right[..., None], h[..., None]
-    ra, rb = rate_left[..., None] * h, rate_right[..., None] * h
-    value = (1 + 2 * z) * (1 - z) ** 2 * a + z * (1 - z) ** 2 * ra + z**2 * (3 - 2 * z) * b + z**2 * (z - 1) * rb
-    rate = (6 * z * (1 - z) * (b - a) + (1 - z) * (1 - 3 * z) * ra + z * (3 * z - 2) * rb) / h
-    return value, rate
+_CUBIC = [
+    [(1 + 2 * _BETWEEN) * (1 - _BETWEEN) ** 2, _BETWEEN**2 * (3 - 2 * _BETWEEN)],
+    [_BETWEEN * (1 - _BETWEEN) ** 2, _BETWEEN**2 * (_BETWEEN - 1)],
+]
+"""Weights, at those fractions, of a cubic's values at both ends, and of its rates there times the step."""
+_SLOPE = [
+    [-6 * _BETWEEN * (1 - _BETWEEN), 6 * _BETWEEN * (1 - _BETWEEN)],
+    [(1 - _BETWEEN) * (1 - 3 * _BETWEEN), _BETWEEN * (3 * _BETWEEN - 2)],
+]
+"""The same for its rate times the step."""
+_FLOWS = [at.H_RATE + at.M_CAP, at.H_RATE + at.M_ROD]
+_KEPT = [at.H_TIME, *range(at.H_STATE, at.H_STATE + at.N_STATE), *_FLOWS, at.H_SIDE]
+"""Columns of the kernel's history that the arrays are made of."""
+
+
+def _between(weights: list[list[Array]], values: tuple[Array, Array], rates: tuple[Array, Array]) -> Array:
+    """Weighted sum over both ends of each step; one axis more, of the fractions, than the ends."""
+    out: Array = values[0][..., None] * weights[0][0]
+    out += values[1][..., None] * weights[0][1]
+    out += rates[0][..., None] * weights[1][0]
+    out += rates[1][..., None] * weights[1][1]
+    return out
 
 
 def fill_in(rows: Array, par: Array) -> Histories:
@@ -58,30 +72,30 @@ def fill_in(rows: Array, par: Array) -> Histories:
     Histories
         Read-only arrays, three points of its cubic added within each step.
     """
-    time, side = rows[:, at.H_TIME], rows[:, at.H_SIDE]
-    h = np.diff(time)
+    columns = np.ascontiguousarray(rows.T)
+    h = np.diff(columns[at.H_TIME])
     steps = np.flatnonzero(h > 0.0)
-    keys = np.concatenate([np.arange(len(time), dtype=float), (steps[:, None] + _BETWEEN[None, :]).ravel()])
-    order = np.argsort(keys, kind="stable")
-
-    def merged(nodes: Array, between: Array) -> Array:
-        """Values at the ends of the steps and between them, by time along the last axis."""
-        flat = between.reshape(*nodes.shape[:-1], -1)
-        out: Array = np.concatenate([nodes, flat], axis=-1)[..., order]
-        return out
-
-    columns = rows.T
-    values = columns[at.H_STATE : at.H_STATE + at.N_STATE]
-    slopes = columns[at.H_RATE : at.H_RATE + at.N_STATE]
-    mid, mid_rate = _cubic(values[:, steps], values[:, steps + 1], slopes[:, steps], slopes[:, steps + 1], h[steps])
-    x, v, m_cap, u_cap, m_rod, u_rod = merged(values, mid)
-    flow_cap, flow_rod = merged(slopes[[at.M_CAP, at.M_ROD]], mid_rate[[at.M_CAP, at.M_ROD]])
+    width = h[steps]
+    left, right = columns.take(steps, axis=1), columns.take(steps + 1, axis=1)
+    left[at.H_RATE : at.H_SIDE] *= width
+    right[at.H_RATE : at.H_SIDE] *= width
+    state, rate = slice(at.H_STATE, at.H_STATE + at.N_STATE), slice(at.H_RATE, at.H_RATE + at.N_STATE)
+    mass = [at.H_STATE + at.M_CAP, at.H_STATE + at.M_ROD]
+    inner = np.empty((len(_KEPT), len(steps), len(_BETWEEN)))
+    inner[0] = left[at.H_TIME][:, None] + _BETWEEN * width[:, None]
+    inner[1 : 1 + at.N_STATE] = _between(_CUBIC, (left[state], right[state]), (left[rate], right[rate]))
+    inner[-3:-1] = _between(_SLOPE, (left[mass], right[mass]), (left[_FLOWS], right[_FLOWS])) / width[:, None]
+    inner[-1] = left[at.H_SIDE][:, None]
+    keys = np.concatenate([np.arange(columns.shape[1], dtype=float), (steps[:, None] + _BETWEEN).ravel()])
+    both = np.concatenate([columns[_KEPT], inner.reshape(len(_KEPT), -1)], axis=1)
+    merged = both.take(np.argsort(keys, kind="stable"), axis=1)
+    time, x, v, m_cap, u_cap, m_rod, u_rod, flow_cap, flow_rod, side = merged
     vol_cap = par[at.DEAD_CAP] + par[at.AREA_CAP] * x
     vol_rod = par[at.DEAD_ROD] + par[at.AREA_ROD] * (par[at.STROKE] - x)
     p0, t0 = par[at.P_AMB], par[at.T_AMB]
-    cap_on_supply = merged(side, np.repeat(side[steps], len(_BETWEEN))) > 0.0
+    cap_on_supply = side > 0.0
     found = {
-        "time": merged(time, time[steps, None] + _BETWEEN[None, :] * h[steps, None]),
+        "time": time,
         "position": x,
         "speed": v,
         "p_cap": np.full_like(x, p0) if par[at.VENTED_CAP] else (GAMMA - 1.0) * u_cap / vol_cap,
