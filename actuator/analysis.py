@@ -16,6 +16,7 @@ from actuator.energy.cost import YearlyCost, yearly_cost
 from actuator.energy.demand import demand
 from actuator.energy.indicator import Indicator, ideal_indicator
 from actuator.errors import Cancelled, Refusal
+from actuator.holding.held import holding
 from actuator.judge import judge
 from actuator.parts import Actuator, Machine, Project, Site
 from actuator.results import (
@@ -162,6 +163,7 @@ def _actuator(
 ) -> ActuatorResult:
     site = project.site
     paths = flow_paths(actuator)
+    held = holding(actuator, stroke, parameters(actuator, machine, site, paths))
     return ActuatorResult(
         part=actuator,
         **_scattering(actuator, machine, project, supply, stroke, paths),
@@ -174,7 +176,8 @@ def _actuator(
         ),
         paths=paths,
         worst=worst,
-        cautions=(*cautions(actuator, machine, site, stroke), *hazards(stroke, worst)),
+        cautions=(*cautions(actuator, machine, site, stroke, held), *hazards(stroke, worst)),
+        holding=held,
         remarks=stroke.remarks if isinstance(stroke, StrokeResult) else (),
     )
 

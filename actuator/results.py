@@ -8,6 +8,7 @@ from actuator.cautions import Caution
 from actuator.energy.cost import YearlyCost
 from actuator.energy.indicator import Indicator
 from actuator.errors import Refusal
+from actuator.holding.held import Held
 from actuator.parts import Actuator, Machine, Project
 from actuator.stroke.dynamics import Dynamics
 from actuator.stroke.result import HalfStroke, Path, StrokeResult
@@ -132,6 +133,8 @@ class ActuatorResult:
     paths: tuple[Path, ...]
     stroke: StrokeResult | Refusal
     dynamics: Dynamics | Refusal
+    holding: tuple[Held, ...]
+    """What happens when supply, signal or both are lost, from either end."""
     air: Air | Refusal
     cost: YearlyCost | Refusal
     """Of one machine's actuator, a year."""

@@ -13,9 +13,10 @@ from actuator.parts import Actuator
 from actuator.stroke import layout as at
 from actuator.stroke.result import Array, HalfStroke, StrokeResult
 
+STILL = Refusal("it holds")
 Move = tuple[float, float | Refusal, float | Refusal]
 """Way [m], time [s], speed at its end [m/s]."""
-STAYS: Move = (0.0, Refusal("it holds"), 0.0)
+STAYS: Move = (0.0, STILL, 0.0)
 NO_AIR = Refusal("no closed-in air holds it")
 
 

@@ -10,8 +10,8 @@ from actuator.flow.scalar import LINEAR_FROM, passage
 
 CRITICAL_RATIO, SUBSONIC_INDEX = 0.5, 0.5
 """Critical ratio and subsonic index of a leak; Source ``practice``. [1]"""
-NO_LEAK = Refusal("no leak is given: how long closed-in air holds is not known", "holding.seal_leak_c")
-NEVER = Refusal("it does not start: what is left when the air has leaked away does not move it")
+NO_LEAK = Refusal("no leak is given, so the time is not known", "holding.seal_leak_c")
+NEVER = Refusal("it does not start, even with no air left")
 
 
 def time_to_fall(

@@ -10,6 +10,7 @@ from typing import Any
 from actuator.answer import Answer
 from actuator.cautions import Caution
 from actuator.errors import Problem, Refusal
+from actuator.report import holding_view
 from actuator.report.figures import FIGURES, At, completed
 from actuator.results import ActuatorResult, Analysis, Criterion, MachineResult
 from actuator.stroke.result import StrokeResult
@@ -51,10 +52,12 @@ def _put(tree: Tree, path: Sequence[str], value: Any) -> None:
 
 
 def _figures(at: At, *, money: bool) -> Tree:
-    """Figures of one place, those about money apart."""
+    """Figures of one place, those about money apart; what happens on a loss is a list of its own."""
     tree: Tree = {}
     for figure in FIGURES[at.level].values():
         head, *tail = figure.json_path
+        if head == "holding":
+            continue
         if (head == "money") == money:
             _put(tree, tail if money else (head, *tail), _plain(figure.value(at)))
     return tree
@@ -94,6 +97,7 @@ def _actuator(at: At, histories: bool) -> Tree:
     tree["criteria"] = [_criterion(item) for item in result.criteria]
     tree["position_reached_m"] = reached
     tree["completed"] = tree["extend"]["completed"] and tree["retract"]["completed"]
+    tree["holding"] = holding_view.listed(at)
     tree["cautions"] = [_caution(item) for item in result.cautions]
     tree["remarks"] = list(result.remarks)
     if not isinstance(result.stroke, Refusal):

@@ -7,6 +7,7 @@ from collections.abc import Callable, Iterable, Sequence
 from actuator.answer import Answer
 from actuator.cautions import DECIDE
 from actuator.errors import Problem, Refusal
+from actuator.report import holding_view
 from actuator.report.figures import FIGURES, At, Figure, completed, flow
 from actuator.report.names import all_figures
 from actuator.report.shown import Shown, shown_for
@@ -116,6 +117,9 @@ def _actuator(at: At, shown: Shown) -> list[str]:
         "Shares of the supplied exergy": lambda _: [],
         "Exhaust loss": lambda _: [],
         "Flow paths": lambda _: _paths(at, shown),
+        "Holding, supply lost": lambda _: holding_view.table(at, shown),
+        "Holding, signal lost": lambda _: [],
+        "Holding, both lost": lambda _: [],
     }
     for title, figures in groups(at).items():
         show = special.get(title)

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 
 from actuator.answer import Answer
 from actuator.errors import Refusal
+from actuator.report import holding_view
 from actuator.report.equations import equations
 from actuator.report.fields import field_values
 from actuator.report.figures import FIGURES, At, Figure
@@ -106,6 +107,7 @@ def _remarks(figure: Figure, at: At) -> Iterator[str]:
         yield result.air.difference
     if figure.group.startswith("Ideal indicator"):
         yield from result.indicator.remarks
+    yield from holding_view.remarks(figure, at)
     if figure.group == "Rod" and "shigley" in figure.sources and result.rod.rule:
         yield f"Rule used: {result.rod.rule}."
     if figure.simulated and not figure.key.startswith("worst.") and not isinstance(result.stroke, Refusal):

@@ -98,7 +98,7 @@ def test_half_the_leak_holds_twice_as_long(function: Any) -> None:
 def test_without_a_leak_the_time_is_refused_and_friction_may_hold_for_good() -> None:
     raised = found(lift(), "5/3 closed")["signal lost", "extended"]
     assert raised.starts_after == NO_LEAK
-    assert str(NO_LEAK) == "no leak is given: how long closed-in air holds is not known"
+    assert str(NO_LEAK) == "no leak is given, so the time is not known"
     assert raised.direction == "retract"
     lowered = found(lift(), "5/3 closed")["signal lost", "retracted"]
     assert (lowered.starts_after, lowered.direction) == (NEVER, "")

@@ -15,6 +15,8 @@ from actuator.cautions import Caution
 from actuator.energy.cost import YearlyCost
 from actuator.energy.indicator import Indicator
 from actuator.errors import Refusal
+from actuator.holding.held import Held
+from actuator.holding.leak import NEVER
 from actuator.parts import Project
 from actuator.project.document import parse
 from actuator.project.validate import validate
@@ -142,6 +144,30 @@ def _dynamics(numbers: Iterator[float]) -> Dynamics:
     return Dynamics(extend=extend, retract=retract, force=np.linspace(-1.0, 1.0, 4))
 
 
+def _holding(numbers: Iterator[float]) -> tuple[Held, ...]:
+    """All six losses; signal lost holds on closed-in air, for good at the retracted end."""
+    found = []
+    for case, holds in (("supply lost", False), ("signal lost", True), ("both lost", False)):
+        for start, direction in (("extended", "retract"), ("retracted", "extend")):
+            forever = holds and start == "retracted"
+            more = {"starts_after": NEVER} if forever else {}
+            found.append(
+                _filled(
+                    Held,
+                    numbers,
+                    case=case,
+                    start=start,
+                    cap="checked" if holds else "open",
+                    rod="shut" if holds else "supplied",
+                    holds=holds,
+                    by="closed-in air" if holds else "",
+                    direction="" if forever else direction,
+                    **more,
+                )
+            )
+    return tuple(found)
+
+
 def _criteria(part: Any) -> tuple[Criterion, ...]:
     if part.require.stroke_time is None:
         return ()
@@ -202,6 +228,7 @@ def _actuator(part: Any, numbers: Iterator[float], stroke: StrokeResult | Refusa
         paths=tuple(_filled(Path, numbers, name=name) for name in flow.PATHS),
         stroke=stroke,
         dynamics=stroke if isinstance(stroke, Refusal) else _dynamics(numbers),
+        holding=_holding(numbers),
         air=stroke if isinstance(stroke, Refusal) else _filled(Air, numbers, difference="an invented reason"),
         cost=stroke if isinstance(stroke, Refusal) else _filled(YearlyCost, numbers),
         worst=stroke if isinstance(stroke, Refusal) else _worst(numbers),

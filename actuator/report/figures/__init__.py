@@ -1,6 +1,6 @@
 """One registry of figures: everything that JSON, text, CSV, screen and workings show comes from it."""
 
-from actuator.report.figures import beam, cycle, dynamics, flow, forces, money, motion, worst
+from actuator.report.figures import beam, cycle, dynamics, flow, forces, held, money, motion, worst
 from actuator.report.figures.motion import completed
 from actuator.report.figures.registry import At, Direction, Figure, Level, si_unit
 
@@ -12,6 +12,7 @@ ACTUATOR_FIGURES: tuple[Figure, ...] = (
     + money.ACTUATOR
     + forces.FIGURES
     + beam.FIGURES
+    + held.FIGURES
     + flow.FIGURES
 )
 MACHINE_FIGURES: tuple[Figure, ...] = money.MACHINE
