@@ -9,7 +9,8 @@ import math
 from dataclasses import dataclass
 from typing import Any
 
-from actuator.parts import Actuator, Friction, Load, Machine, ProcessForce, Site, Throttle, Valve
+from actuator.parts import Actuator, Friction, Load, Machine, ProcessForce, Site, Spring, Throttle, Valve
+from actuator.parts.actuator import acting_needles
 
 CONDUCTANCE = 1e-8
 """One dm³/(s·bar). [m³/(s·Pa)]"""
@@ -55,9 +56,15 @@ def case(
     back: float | None = None,
     h: float | None = 60.0,
     n: float | None = None,
+    coil: tuple[float, float] | None = None,
     **more: Any,
 ) -> Case:
-    """Build a case; dead volumes [cm³] and friction default to common practice, ``slope`` in degrees."""
+    """Build a case; dead volumes [cm³] and friction default to common practice, ``slope`` in degrees.
+
+    ``coil`` is a spring's rate [N/mm] and preload [N].
+    """
+    kind = more.get("kind", "double-acting")
+    acting = acting_needles(kind, throttle[0]) if throttle else ()
     area = math.pi / 4 * (bore * 1e-3) ** 2
     push = (supply - ambient) * 1e5 * area
     breakaway, coulomb, viscous = friction or (0.08 * push, 0.05 * push, 0.6 * bore)
@@ -92,13 +99,15 @@ def case(
             m=m,
             delay=delay,
             opening_time=opening,
+            function="3/2" if coil else "5/2 spring",
         ),
+        spring=None if coil is None else Spring(rate=coil[0] * 1e3, preload=coil[1]),
         throttle=Throttle()
         if throttle is None
         else Throttle(
             kind="meter-in" if throttle[0] == "meter-in" else "meter-out",
-            extend_c=throttle[1] * CONDUCTANCE,
-            retract_c=throttle[2] * CONDUCTANCE,
+            extend_c=throttle[1] * CONDUCTANCE if "extend_c" in acting else None,
+            retract_c=throttle[2] * CONDUCTANCE if "retract_c" in acting else None,
             free_c=throttle[3] * CONDUCTANCE,
             b=throttle_b,
         ),
@@ -127,8 +136,49 @@ REFERENCE_CASES = (
 )
 """The five rows of the ledger."""
 
+SPRINGS = (
+    case("spring returns", 32, 12, 50, 2.0, c=0.8, kind="spring-return", coil=(1.0, 60.0), period=1.5),
+    case("spring extends", 32, 12, 50, 2.0, c=0.8, kind="spring-extend", coil=(1.0, 60.0), period=1.5),
+    case("spring, tiny", 12, 6, 10, 0.05, c=0.2, kind="spring-return", coil=(0.5, 8.0), period=0.6),
+    case("spring, stopper", 40, 16, 25, 3.0, c=1.0, kind="spring-return", coil=(2.0, 50.0), slope=90, period=1.2),
+    case("spring lifts", 40, 16, 40, 2.0, c=1.0, kind="spring-extend", coil=(1.5, 90.0), slope=90, period=2.0),
+    case(
+        "spring, meter-out", 32, 12, 80, 3.0, c=1.2, kind="spring-return", coil=(0.8, 70.0),
+        throttle=("meter-out", 0.2, 0.15, 1.5), period=3.0,
+    ),
+    case(
+        "spring, meter-in", 32, 12, 80, 3.0, c=1.2, kind="spring-return", coil=(0.8, 70.0),
+        throttle=("meter-in", 0.2, 0.2, 1.5), period=3.0,
+    ),
+    case(
+        "spring extends, meter-out", 40, 16, 100, 5.0, c=1.5, kind="spring-extend", coil=(0.8, 100.0),
+        throttle=("meter-out", 0.3, 0.3, 2.0), period=3.0,
+    ),
+    case("spring turned back early", 32, 12, 100, 6.0, c=0.5, kind="spring-return", coil=(0.5, 60.0), retract_at=0.15),
+    case(
+        "spring against work", 50, 20, 60, 5.0, c=1.5, kind="spring-return", coil=(1.0, 120.0),
+        process=((40, 60, 300.0),),
+    ),
+    case("spring, cut off", 40, 16, 80, 4.0, c=1.5, kind="spring-return", coil=(0.6, 80.0), cut_off=0.6, period=2.0),
+    case("spring, index 1.2", 40, 16, 80, 4.0, c=1.5, kind="spring-extend", coil=(0.6, 80.0), n=1.2, period=2.0),
+    case("spring held by pressure", 50, 20, 80, 3.0, c=1.0, supply=2.0, kind="spring-return", coil=(1.5, 120.0)),
+    case(
+        "spring too weak", 40, 16, 80, 4.0, c=1.5, kind="spring-return", coil=(0.3, 40.0),
+        load={"guide_friction": 1.0},
+    ),
+    case("spring, adiabatic", 40, 16, 80, 4.0, c=1.5, kind="spring-return", coil=(0.6, 80.0), h=0.0, period=1.0),
+)  # fmt: skip
+"""Single-acting cylinders."""
+
 CASES = (
     *REFERENCE_CASES,
+    *SPRINGS,
+    case("through rod", 40, 16, 200, 8.0, c=1.5, kind="through-rod", period=2.5),
+    case("through rod up a ramp", 50, 20, 300, 20.0, c=2.0, kind="through-rod", slope=30),
+    case("rodless", 40, 0, 600, 10.0, c=1.5, kind="rodless", period=5.0),
+    case(
+        "rodless, meter-out", 32, 0, 900, 6.0, c=1.2, kind="rodless", throttle=("meter-out", 0.4, 0.6, 1.5), period=8.0
+    ),
     case("tiny", 12, 6, 10, 0.1, c=0.3, period=1.0),
     case("small meter-out", 12, 6, 100, 0.5, c=0.4, throttle=("meter-out", 0.15, 0.15, 0.4), period=2.0),
     case("small and quick", 16, 6, 50, 0.3, c=0.8, period=0.5),

@@ -49,7 +49,8 @@ def reference(
     """
     model = Model(actuator, machine, site, table=table, exact=exact)
     t0 = site.ambient_temperature
-    state = State(0.0, 0.0, 0, site.ambient_pressure, t0, model.p_supply["retract"], t0)
+    p_rod = site.ambient_pressure if model.vented == "rod" else model.p_supply["retract"]
+    state = State(0.0, 0.0, 0, site.ambient_pressure, t0, p_rod, t0)
     course = Course(least=state.x, most=state.x)
     mismatch, cycles, settled = math.inf, 0, False
     while not (settled and mismatch <= repeat) and cycles < MOST_CYCLES:
@@ -102,12 +103,16 @@ def _cycle(model: Model, state: State, course: Course, rtol: float) -> tuple[Hal
 
 
 def mass_cap(model: Model, state: State) -> float:
-    """Air in the cap side. [kg]"""
+    """Air in the cap side, if it holds any of its own. [kg]"""
+    if model.vented == "cap":
+        return 0.0
     return state.p1 * (model.part.dead_volume_cap + model.area1 * state.x) / (R_AIR * state.t1)
 
 
 def mass_rod(model: Model, state: State) -> float:
-    """Air in the rod side. [kg]"""
+    """Air in the rod side, if it holds any of its own. [kg]"""
+    if model.vented == "rod":
+        return 0.0
     volume = model.part.dead_volume_rod + model.area2 * (model.part.stroke - state.x)
     return state.p2 * volume / (R_AIR * state.t2)
 

@@ -1,4 +1,4 @@
-"""A double-acting cylinder for scipy: forces and right-hand sides.
+"""A cylinder for scipy, double-acting or with a spring: forces and right-hand sides.
 
 Written from the equations alone, with pressure and temperature of each chamber as the state, so that
 it shares nothing with the project's kernel (which carries mass and internal energy) but the parts.
@@ -82,8 +82,10 @@ class Model:
         back = actuator.return_pressure
         self.p_supply = {"extend": machine.supply_pressure, "retract": back or machine.supply_pressure}
         self.period = machine.cycle_time
-        self.area1 = math.pi / 4 * actuator.bore**2
-        self.area2 = math.pi / 4 * (actuator.bore**2 - actuator.rod**2)
+        full, annulus = math.pi / 4 * actuator.bore**2, math.pi / 4 * (actuator.bore**2 - actuator.rod**2)
+        self.area1 = annulus if actuator.kind == "through-rod" else full
+        self.area2 = full if actuator.kind == "rodless" else annulus
+        self.vented = {"spring-return": "rod", "spring-extend": "cap"}.get(actuator.kind, "")
         load = actuator.load
         self.guide = load.guide_friction * load.mass * GRAVITY * math.cos(load.inclination)
         self.steady = (
@@ -101,6 +103,9 @@ class Model:
             assert len(table) == len(built), "with a throttle give a path table, or exact=True"
         found: dict[tuple[str, str], Exchange] = {}
         for side, direction in (("cap", "extend"), ("rod", "retract")):
+            if side == self.vented:
+                found[side, "supply"] = found[side, "atmosphere"] = shut
+                continue
             p_s = self.p_supply[direction]
             for far, into, out, p_far, temp in (
                 ("supply", f"{side}, filling", f"{side}, back to supply", p_s, self.temp_s),
@@ -113,9 +118,18 @@ class Model:
                 )
         return found
 
-    def drive(self, p1: float, p2: float) -> float:
+    def spring(self, x: float) -> float:
+        """Force of the spring along +x: in at the retracted end it is relaxed to its preload, or out there. [N]"""
+        coil = self.part.spring
+        if coil is None:
+            return 0.0
+        if self.vented == "rod":
+            return -(coil.preload + coil.rate * x)
+        return coil.preload + coil.rate * (self.part.stroke - x)
+
+    def drive(self, p1: float, p2: float, x: float) -> float:
         """Force along +x without friction and without what only opposes motion. [N]"""
-        return p1 * self.area1 - p2 * self.area2 + self.steady
+        return p1 * self.area1 - p2 * self.area2 + self.steady + self.spring(x)
 
     def opposing(self, x: float, way: int) -> float:
         """What only opposes motion in direction ``way`` at ``x``, without friction. [N]"""
@@ -134,7 +148,7 @@ class Model:
 
     def starts(self, state: State) -> int:
         """Way in which a resting piston is driven beyond its threshold: +1, −1, or 0."""
-        force = self.drive(state.p1, state.p2)
+        force = self.drive(state.p1, state.p2, state.x)
         ways = (way for way in (1, -1) if self.has_room(state.x, way))
         return next((way for way in ways if way * force > self.threshold(state.x, way)), 0)
 
@@ -173,7 +187,7 @@ class Model:
             part.dead_volume_cap,
             part.dead_volume_rod,
         )
-        round_wall = math.pi * part.bore
+        round_wall, vented = math.pi * part.bore, self.vented
         f_c, k_v, v_s = friction.coulomb, friction.viscous, friction.stribeck_speed
         f_over = friction.breakaway - f_c
         against = self.guide + self.opposing(x_ahead, way)
@@ -189,7 +203,11 @@ class Model:
             left = stroke - x
             dp1, dt1, h1 = self.chamber(p1, t1, q1, far1, dead1 + a1 * x, a1 * v, round_wall * x + 2.0 * a1)
             dp2, dt2, h2 = self.chamber(p2, t2, q2, far2, dead2 + a2 * left, -a2 * v, round_wall * left + 2.0 * a2)
-            found = [v, (self.drive(p1, p2) - way * (rub + against)) / mass, dp1, dt1, dp2, dt2]
+            if vented == "rod":
+                dp2 = dt2 = h2 = 0.0
+            elif vented == "cap":
+                dp1 = dt1 = h1 = 0.0
+            found = [v, (self.drive(p1, p2, x) - way * (rub + against)) / mass, dp1, dt1, dp2, dt2]
             if ledger:
                 found += ledger(v, rub, (p1, t1, q1, h1), (p2, t2, q2, h2))
             return found

@@ -78,21 +78,16 @@ def chains(actuator: Actuator) -> ChainTable:
     supply = Element(valve.supply_c, valve.supply_b, valve.m)
     exhaust = Element(valve.exhaust_c, valve.exhaust_b, valve.m)
     table: ChainTable = {}
-    for side in ("cap", "rod"):
+    for side in {"spring-return": ("cap",), "spring-extend": ("rod",)}.get(actuator.kind, ("cap", "rod")):
         inward: tuple[Element, ...] = ()
         outward: tuple[Element, ...] = ()
         if throttle.kind != "none":
-            assert throttle.extend_c is not None
-            assert throttle.retract_c is not None
+            metering_in = throttle.kind == "meter-in"
+            c = throttle.extend_c if (side == "cap") == metering_in else throttle.retract_c
+            assert c is not None
             assert throttle.free_c is not None
-            free = Element(throttle.free_c, throttle.b)
-            into_cap = side == "cap"
-            if throttle.kind == "meter-in":
-                needle = Element(throttle.extend_c if into_cap else throttle.retract_c, throttle.b)
-                inward, outward = (needle,), (free,)
-            else:
-                needle = Element(throttle.retract_c if into_cap else throttle.extend_c, throttle.b)
-                inward, outward = (free,), (needle,)
+            needle, free = Element(c, throttle.b), Element(throttle.free_c, throttle.b)
+            inward, outward = ((needle,), (free,)) if metering_in else ((free,), (needle,))
         table[f"{side}, filling"] = (supply, *inward)
         table[f"{side}, back to supply"] = (*outward, supply)
         table[f"{side}, exhausting"] = (*outward, exhaust)

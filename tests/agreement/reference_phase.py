@@ -112,7 +112,7 @@ def rest(
 
     def surplus(way: int) -> Callable[[float, Array], float]:
         wanted = model.threshold(state.x, way)
-        return lambda _, y: way * model.drive(float(y[0]), float(y[2])) - wanted
+        return lambda _, y: way * model.drive(float(y[0]), float(y[2]), state.x) - wanted
 
     ways = [way for way in (1, -1) if model.has_room(state.x, way)]
     events = [Event(surplus(way), 1.0) for way in ways]
