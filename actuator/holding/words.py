@@ -74,15 +74,17 @@ def weight(actuator: Actuator, held: tuple[Held, ...]) -> Iterator[tuple[str, st
         if means
         else "no rod lock, check valve or counterweight is part of this calculation"
     )
-    rubs = (
-        "The friction given would hold it, but friction is no lock: wear, oil and vibration lower it."
-        if abs(pull) <= stuck
-        else "The friction given does not hold it."
-    )
+    falls = _fall(held, direction)
+    if abs(pull) > stuck:
+        rubs = "The friction given does not hold it."
+    elif falls:
+        rubs = "The friction given would hold the weight alone, but not against what else drives it then."
+    else:
+        rubs = "The friction given would hold it, but friction is no lock: wear, oil and vibration lower it."
     yield (
         "load.inclination",
         f"The weight pulls along the stroke with {abs(pull):.4g} N and {direction}s the piston when air or signal is "
-        f"lost; {relies}. {rubs}{_fall(held, direction)} Secure a raised load before anyone reaches under it.",
+        f"lost; {relies}. {rubs}{falls} Secure a raised load before anyone reaches under it.",
     )
 
 
