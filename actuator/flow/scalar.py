@@ -60,16 +60,18 @@ def passage(p_up: float, p_down: float, temp_up: float, c: float, b: float, m: f
     return c * p_up * RHO_ISO6358 * linear * math.sqrt(TEMP_ANR / temp_up * bracket)
 
 
-def passage_slope(p_up: float, p_down: float, temp_up: float, c: float, b: float, m: float) -> float:
+def passage_slope(
+    flow: float, p_up: float, p_down: float, temp_up: float, c: float, b: float, m: float
+) -> float:
     """Derivative of :func:`passage` by the downstream pressure, never above zero. [kg/(s·Pa)]
 
-    Parameters as there, ``p_down`` ≤ ``p_up``. The flow is of degree one in both pressures, so that the derivative
-    by the upstream pressure is (flow - p₂·slope)/p₁ (Euler).
+    ``flow`` is what :func:`passage` gives for the other parameters, ``p_down`` ≤ ``p_up``. The flow is of degree one
+    in both pressures, so that the derivative by the upstream pressure is (flow - p₂·slope)/p₁ (Euler).
     """
     if p_down > LINEAR_FROM * p_up:
         return -passage(p_up, LINEAR_FROM * p_up, temp_up, c, b, m) / ((1.0 - LINEAR_FROM) * p_up)
     if p_down <= b * p_up:
         return 0.0
-    share = (p_down - b * p_up) / ((1.0 - b) * p_up)
-    relative = -2.0 * m * share / ((1.0 - share * share) * (1.0 - b) * p_up)
-    return relative * passage(p_up, p_down, temp_up, c, b, m)
+    width = (1.0 - b) * p_up
+    share = (p_down - b * p_up) / width
+    return -2.0 * m * share * flow / ((1.0 - share * share) * width)

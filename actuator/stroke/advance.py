@@ -7,10 +7,12 @@ from collections.abc import Sequence
 from typing import NamedTuple
 
 from actuator.stroke import layout as at
-from actuator.stroke.equations import Row, State, excess
+from actuator.stroke.equations import excess
 from actuator.stroke.events import EDGE, REVERSAL, START, event_slope, event_value, first_guess, next_edge
 from actuator.stroke.ledger import book
-from actuator.stroke.steppers import Step, explicit_step, implicit_step
+from actuator.stroke.slopes import NO_SLOPES, slopes_at
+from actuator.stroke.states import Row, State, Table
+from actuator.stroke.steppers import explicit_step, implicit_step
 
 NONE, FAILED = -1, -2
 """No event; a start that did not move the piston."""
@@ -36,7 +38,10 @@ class Advance(NamedTuple):
     """An accepted step."""
 
     status: float
-    step: Step
+    y: State
+    """State at its end."""
+    k: State
+    """Rates at its end."""
     taken: float
     """Its length. [s]"""
     h: float
@@ -50,13 +55,17 @@ def implicit_now(rtol: float, mode: Row) -> bool:
     return mode[at.DIRECTION] == 0.0 or rtol >= _COARSE or mode[at.STIFF] >= _LIMP_LIMIT
 
 
-def arrival(y: State, k: State, mode: Row, par: Row) -> float:
-    """Time until a moving piston reaches the end at its present acceleration; without end if it does not. [s]"""
+def event_ahead(y: State, k: State, mode: Row, par: Row) -> float:
+    """Time until the end at the present acceleration, or until the start at the present rise of the drive. [s]"""
     direction = mode[at.DIRECTION]
+    if direction == 0.0:
+        lack = -excess(y, mode, par)
+        rise = event_slope(START, y, k, mode, par)
+        return lack / rise if lack > 0.0 and rise > 0.0 and mode[at.ARMED] > 0.5 else math.inf
     way = par[at.STROKE] - y[at.X] if direction > 0.0 else y[at.X]
     v = direction * y[at.V]
     square = v * v + 2.0 * direction * k[at.V] * way
-    if direction == 0.0 or square <= 0.0 or v + math.sqrt(square) <= 0.0:
+    if square <= 0.0 or v + math.sqrt(square) <= 0.0:
         return math.inf
     return 2.0 * way / (v + math.sqrt(square))
 
@@ -75,38 +84,41 @@ def resized(wrong: float, implicit: bool) -> float:
     if wrong < 1e-4:
         return 5.0
     if wrong < 1e12:
-        return min(5.0, max(0.2, 0.9 * math.pow(wrong, -0.25 if implicit else -0.2)))
+        root = math.sqrt(math.sqrt(wrong)) if implicit else math.pow(wrong, 0.2)
+        return min(5.0, max(0.2, 0.9 / root))
     return 0.2
 
 
-def event_of_motion(y: State, k: State, step: Step, taken: float, mode: Row, par: Row, edges: Row) -> Found:
+def event_of_motion(
+    y: State, k: State, end_y: State, end_k: State, taken: float, mode: Row, par: Row, edges: Row
+) -> Found:
     """First end, edge or reversal that a step of a moving piston passes."""
     direction = mode[at.DIRECTION]
-    if y[at.V] == 0.0 and direction * step.y[at.V] <= 0.0:
+    if y[at.V] == 0.0 and direction * end_y[at.V] <= 0.0:
         return Found(FAILED, 0.0, 0.0)
     end = par[at.STROKE] if direction > 0.0 else 0.0
     edge = next_edge(y[at.X], mode, par, edges)
     found = Found(NONE, 0.0, taken)
     for kind in range(3):
         goal = edge if kind == EDGE else end
-        after = event_value(kind, step.y, mode, par, goal)
+        after = event_value(kind, end_y, mode, par, goal)
         if after >= 0.0:
             before = event_value(kind, y, mode, par, goal)
             slope = event_slope(kind, y, k, mode, par)
-            part = first_guess(before, slope, after, event_slope(kind, step.y, step.k, mode, par), taken)
+            part = first_guess(before, slope, after, event_slope(kind, end_y, end_k, mode, par), taken)
             if found.event == NONE or part < found.part:
                 found = Found(kind, goal, part)
     return found
 
 
-def event_at_rest(y: State, k: State, step: Step, taken: float, mode: Row, par: Row) -> Found:
+def event_at_rest(y: State, k: State, end_y: State, end_k: State, taken: float, mode: Row, par: Row) -> Found:
     """Start of motion within a step of a resting piston."""
-    after = excess(step.y, mode, par)
+    after = excess(end_y, mode, par)
     if mode[at.ARMED] < 0.5 or after <= 0.0:
         return Found(NONE, 0.0, taken)
     before = excess(y, mode, par)
     slope = event_slope(START, y, k, mode, par)
-    part = first_guess(before, slope, after, event_slope(START, step.y, step.k, mode, par), taken)
+    part = first_guess(before, slope, after, event_slope(START, end_y, end_k, mode, par), taken)
     return Found(START, 0.0, part)
 
 
@@ -132,8 +144,7 @@ def advance(
     par: Row,
     edges: Row,
     gain: Row,
-    doubt: Row,
-    work: Row,
+    work: Table,
     info: Row,
     most: float,
     stop: Sequence[int],
@@ -150,8 +161,8 @@ def advance(
         Whether the step's integrals are left in ``gain``.
     y, k, mode, par, edges : row
         As in :func:`actuator.stroke.cycle.cycle`.
-    gain, doubt, work : row
-        Integrals of the step, their error, and work space.
+    gain, work : row, table
+        Integrals of the step, and work space.
     info : row
         Counters; ``most`` is the number of steps at which the work is given up.
     stop : sequence of int
@@ -159,8 +170,9 @@ def advance(
     """
     implicit = implicit_now(rtol, mode)
     moving = mode[at.DIRECTION] != 0.0
-    # not far beyond the end, where there is no volume left
-    taken = fitted(time, min(h, 1.02 * arrival(y, k, mode, par)), limit)
+    # not far beyond an event: behind the end there is no volume left
+    taken = fitted(time, min(h, 1.1 * event_ahead(y, k, mode, par)), limit)
+    slopes = slopes_at(time, y, mode, par) if implicit else NO_SLOPES
     following = h
     retried = False
     found = Found(NONE, 0.0, taken)
@@ -170,7 +182,10 @@ def advance(
     while True:
         info[at.I_STEPS] += 1.0
         info[at.I_RATES] += 6.0
-        step = implicit_step(time, taken, y, k, mode, par) if implicit else explicit_step(time, taken, y, k, mode, par)
+        if implicit:
+            step = implicit_step(time, taken, y, k, slopes, mode, par)
+        else:
+            step = explicit_step(time, taken, y, k, mode, par)
         if stop[0] != 0:
             status = at.STOPPED
             break
@@ -181,7 +196,7 @@ def advance(
             # a whole step: is it good enough, and is there an event within?
             wrong = step.wrong / rtol
             if ledger and wrong <= 1.0:
-                wrong = max(wrong, book(time, taken, implicit, step, mode, par, work, gain, doubt) / rtol)
+                wrong = max(wrong, book(time, taken, implicit, step, mode, par, work, gain) / rtol)
             factor = resized(wrong, implicit)
             if wrong <= 1.0:
                 if retried:
@@ -193,9 +208,9 @@ def advance(
                 taken = fitted(time, following, limit)
                 continue
             if moving:
-                found = event_of_motion(y, k, step, taken, mode, par, edges)
+                found = event_of_motion(y, k, step.y, step.k, taken, mode, par, edges)
             else:
-                found = event_at_rest(y, k, step, taken, mode, par)
+                found = event_at_rest(y, k, step.y, step.k, taken, mode, par)
             if found.event < 0:
                 break
             high = taken
@@ -213,8 +228,8 @@ def advance(
         guess = taken - g / slope if slope > 0.0 else -1.0
         taken = guess if low < guess < high else 0.5 * (low + high)
     if ledger and found.event >= 0 and status == at.DONE:
-        book(time, taken, implicit, step, mode, par, work, gain, doubt)
+        book(time, taken, implicit, step, mode, par, work, gain)
     if not implicit:
         limp = mode[at.STIFF]
         mode[at.STIFF] = limp + 1.0 if step.stiffness > _LIMP_FROM else max(limp - 1.0, 0.0)
-    return Advance(status, step, taken, following, found.event, found.target)
+    return Advance(status, step.y, step.k, taken, following, found.event, found.target)

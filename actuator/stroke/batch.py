@@ -6,10 +6,7 @@ from collections.abc import Sequence
 
 from actuator.stroke import layout as at
 from actuator.stroke.cycle import settle
-from actuator.stroke.equations import Row
-
-Table = list[Row]
-"""Rows of equal length: a list of lists when interpreted, an array of two dimensions when compiled."""
+from actuator.stroke.states import Row, Table
 
 
 def arrivals(events: Row, info: Row) -> None:
@@ -43,7 +40,7 @@ def batch(
     before: Table,
     history: Row,
     events: Row,
-    work: Row,
+    work: Table,
     stop: Sequence[int],
 ) -> float:
     """Run :func:`actuator.stroke.cycle.settle` over cases, one row of each table a case.
@@ -57,7 +54,7 @@ def batch(
     y, mode, par, switches, edges, forces, info, before : table
         A row for each case as of ``settle``; edges that a case does not have stand beyond its end. ``info`` holds
         each case's status, and time and speed of its first arrival at each end in its last cycle.
-    history, events, work : row
+    history, events, work : row, row, table
         Shared: history and log of the last case remain.
     stop : sequence of int
         Non-zero ends the work.

@@ -24,11 +24,25 @@ import platformdirs
 
 from actuator.flow import scalar
 from actuator.mechanics import friction
-from actuator.stroke import advance, batch, cycle, dopri, equations, events, layout, ledger, rodas, slopes, steppers
+from actuator.stroke import (
+    advance,
+    batch,
+    cycle,
+    dopri,
+    equations,
+    events,
+    layout,
+    ledger,
+    rodas,
+    slopes,
+    states,
+    steppers,
+)
 
 Engine = Literal["auto", "compiled", "interpreted"]
 
-_MODULES = (scalar, friction, layout, dopri, rodas, equations, slopes, steppers, ledger, events, advance, cycle, batch)
+_INLINED = (scalar, friction, states, equations, slopes)
+_MODULES = (*_INLINED, layout, dopri, rodas, steppers, ledger, events, advance, cycle, batch)
 PATIENCE = 6
 """Strokes that a process computes interpreted before it begins to load the compiled kernel: loading costs more. [1]"""
 _OFF = "ACTUATOR_INTERPRETED"
@@ -93,15 +107,18 @@ def _ready_mark(folder: Path) -> Path:
     return folder / "ready"
 
 
-def _options(entry: bool, cached: bool) -> dict[str, Any]:
+def _options(function: types.FunctionType, cached: bool) -> dict[str, Any]:
     """Options for numba of one function.
 
     The kernel neither makes nor keeps an array, so arrays need no counting of references (``_nrt``), which would
-    cost as much as the equations. Only the entry is called from Python and has a cache.
+    cost as much as the equations. The equations are inlined where they are used, except ``rates``, used a dozen
+    times. Only the entry is called from Python and has a cache.
     """
+    entry = function is batch.batch
     return {
         "nogil": True,
         "error_model": "numpy",
+        "forceinline": sys.modules[function.__module__] in _INLINED and function is not equations.rates,
         "_nrt": False,
         "no_cpython_wrapper": not entry,
         "no_cfunc_wrapper": True,
@@ -135,7 +152,7 @@ def bind() -> Settle:
     flags = numba.types.Array(numba.uint8, 1, "C")
     number = numba.float64
     table = numba.types.Array(numba.float64, 2, "C")
-    signature = number(*([number] * 4), numba.boolean, row, *([table] * 8), row, row, row, flags)
+    signature = number(*([number] * 4), numba.boolean, row, *([table] * 8), row, row, table, flags)
     twins: dict[str, Any] = {}
     for name, function in functions.items():
         copy = types.FunctionType(
@@ -143,7 +160,7 @@ def bind() -> Settle:
         )
         copy.__module__ = function.__module__
         copy.__qualname__ = function.__qualname__
-        twins[name] = numba.njit(**_options(entry=name == "batch", cached=folder is not None))(copy)
+        twins[name] = numba.njit(**_options(function, cached=folder is not None))(copy)
     for namespace in namespaces.values():
         namespace.update((name, twin) for name, twin in twins.items() if name in namespace)
     entry = twins["batch"]

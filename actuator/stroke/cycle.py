@@ -10,7 +10,7 @@ from collections.abc import Sequence
 
 from actuator.stroke import layout as at
 from actuator.stroke.advance import FAILED, NONE, advance
-from actuator.stroke.equations import Row, State, connect, excess, rates
+from actuator.stroke.equations import connect, excess, rates
 from actuator.stroke.events import (
     EDGE,
     END,
@@ -23,6 +23,7 @@ from actuator.stroke.events import (
     start_direction,
     store,
 )
+from actuator.stroke.states import Row, State, Table
 
 _STEP_LIMIT = 20000.0
 """Steps of one cycle after which it is given up. [1]"""
@@ -129,7 +130,7 @@ def cycle(
     history: Row,
     events: Row,
     info: Row,
-    work: Row,
+    work: Table,
     stop: Sequence[int],
 ) -> float:
     """Integrate from time 0 to ``period``; state and mode are left as they are there.
@@ -152,8 +153,8 @@ def cycle(
         Edges of the process force [m] and the force below each and beyond the last [N].
     history, events, info : row
         Filled; ``history`` and ``events`` may be empty.
-    work : row
-        Work space of ``N_WORK``.
+    work : table
+        Work space, ``N_WORK`` rows of ``N_INTEGRAL``.
     stop : sequence of int
         Non-zero ends the work.
 
@@ -162,9 +163,7 @@ def cycle(
     float
         Status, one of the codes of :mod:`actuator.stroke.layout`.
     """
-    gain = work[: at.N_INTEGRAL]
-    doubt = work[at.N_INTEGRAL : 2 * at.N_INTEGRAL]
-    spare = work[2 * at.N_INTEGRAL :]
+    gain = work[at.N_WORK - 1]
     now: State = (y[at.X], y[at.V], y[at.M_CAP], y[at.U_CAP], y[at.M_ROD], y[at.U_ROD])
     k = now
     time = 0.0
@@ -187,11 +186,11 @@ def cycle(
             start_if_free(time, now, mode, par, events, info)
             k = rates(time, now, mode, par)
             info[at.I_RATES] += 1.0
-            h = first_step(now, k, par)
+            h = first_step(now, k, mode, par)
             record(time, now, k, mode, history, info)
             fresh = False
         found = advance(
-            time, h, limit, rtol, ledger, now, k, mode, par, edges, gain, doubt, spare, info, most, stop
+            time, h, limit, rtol, ledger, now, k, mode, par, edges, gain, work, info, most, stop
         )  # fmt: skip
         if found.status != at.DONE:
             return found.status
@@ -205,8 +204,8 @@ def cycle(
             continue
         at_limit = found.event == NONE and time + found.taken >= limit * (1.0 - 1e-15)
         time = limit if at_limit else time + found.taken
-        now = placed(found.event, found.target, found.step.y)
-        k = found.step.k
+        now = placed(found.event, found.target, found.y)
+        k = found.k
         record(time, now, k, mode, history, info)
         if ledger:
             for i in range(at.N_INTEGRAL):
@@ -244,7 +243,7 @@ def settle(
     history: Row,
     events: Row,
     info: Row,
-    work: Row,
+    work: Table,
     before: Row,
     stop: Sequence[int],
 ) -> float:

@@ -1,8 +1,7 @@
 """The equations of one cylinder: rates of its state, and what holds the piston at rest.
 
 Plain typed Python that runs as it stands and also compiled by numba: floats, tuples of floats, flat rows and ifs
-only. A row is a list of floats when interpreted and an array when compiled. x counts from the cap end, 1 = cap
-side, 2 = rod side, absolute pressures.
+only. x counts from the cap end, 1 = cap side, 2 = rod side, absolute pressures.
 """
 
 from __future__ import annotations
@@ -14,10 +13,7 @@ from actuator.air.gas import CP, CV, GAMMA, R_AIR
 from actuator.flow.scalar import passage
 from actuator.mechanics.friction import running
 from actuator.stroke import layout as at
-
-Row = list[float]
-State = tuple[float, float, float, float, float, float]
-"""x, v, m₁, U₁, m₂, U₂, or rates or differences of these. [m, m/s, kg, J, kg, J]"""
+from actuator.stroke.states import Row, State
 
 _GAMMA_1 = GAMMA - 1.0
 

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from actuator.air.gas import GAMMA
 from actuator.stroke import layout as at
-from actuator.stroke.equations import Row, State, drive, excess
+from actuator.stroke.equations import drive, excess
+from actuator.stroke.states import Row, State
 
 END, REVERSAL, EDGE, START = 0, 1, 2, 3
 
@@ -120,7 +121,7 @@ def log(time: float, code: float, sign: float, y: State, events: Row, info: Row)
     info[at.I_EVENTS] += 1.0
 
 
-def first_step(y: State, k: State, par: Row) -> float:
+def first_step(y: State, k: State, mode: Row, par: Row) -> float:
     """Step to try first: a hundredth of the shortest time in which a state changes by its own size. [s]"""
     fastest = max(
         abs(k[at.X]) / par[at.STROKE],
@@ -130,4 +131,5 @@ def first_step(y: State, k: State, par: Row) -> float:
         abs(k[at.M_ROD]) / y[at.M_ROD],
         abs(k[at.U_ROD]) / y[at.U_ROD],
     )
-    return 0.01 / max(fastest, 1e-6)
+    h = 0.01 / max(fastest, 1e-6)
+    return min(h, mode[at.OPEN_OVER]) if mode[at.OPEN_OVER] > 0.0 else h

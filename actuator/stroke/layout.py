@@ -41,7 +41,7 @@ N_LEDGER = N_STATE + 29
 N_INTEGRAL = N_LEDGER - N_STATE
 N_WATCHED = Q_X_SIDE + 1 - N_STATE
 """With the ledger, the step error of the first integrals, up to here, counts as well. [1]"""
-N_WORK = 4 * N_INTEGRAL
+N_WORK = 8
 N_LOSS = Q_PISTON + 1 - N_STATE
 """Integrals from here on are linear in the transfers of the chambers, those before are not. [1]"""
 

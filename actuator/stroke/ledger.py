@@ -10,9 +10,10 @@ import math
 from actuator.air.gas import CP, R_AIR
 from actuator.stroke import dopri, rodas
 from actuator.stroke import layout as at
-from actuator.stroke.equations import Chamber, Row, State, cap_chamber, opposing, rod_chamber, rubbing
+from actuator.stroke.equations import Chamber, cap_chamber, opposing, rod_chamber, rubbing
 from actuator.stroke.slopes import cap_tangent, chamber_change, rod_tangent
-from actuator.stroke.steppers import NOTHING, Stages, Step, shifted, sizes, spread
+from actuator.stroke.states import NOTHING, Row, State, Table, scaled, shifted, sizes, spread
+from actuator.stroke.steppers import Stages, Step
 
 _NUDGE = 1e-7
 """Size of a state's change for a difference quotient, over the state. [1]"""
@@ -103,37 +104,26 @@ def transfers(cap: Chamber, rod: Chamber, carried1: float, carried2: float, mode
     out[at.Q_WALL_ROD - at.N_STATE] = rod.heat
 
 
-def tally(
-    time: float, y: State, weight: float, doubt: float, mode: Row, par: Row, out: Row, gain: Row, error: Row
-) -> None:
-    """Add the integrands at one stage, in the weights of the solution to ``gain`` and of the error to ``error``."""
+def integrands(time: float, y: State, mode: Row, par: Row, out: Row) -> None:
+    """All integrands at one state."""
     cap = cap_chamber(time, y, mode, par)
     rod = rod_chamber(time, y, mode, par)
     losses(cap, rod, y[at.V], mode, par, out)
     transfers(cap, rod, cap.outflow * cap.temp, rod.outflow * rod.temp, mode, out)
-    for i in range(at.N_INTEGRAL):
-        gain[i] += weight * out[i]
-    for i in range(at.N_WATCHED):
-        error[i] += doubt * out[i]
 
 
-def tally_change(
-    time: float, y: State, dt: float, dy: State, h: float, mode: Row, par: Row, out: Row, back: Row, total: Row
-) -> None:
-    """Add h times the derivative of the integrands in direction (dt, dy) to ``total``, as long as that row is.
-
-    Exact for the transfers, so that balances close; a difference quotient for the losses.
-    """
-    size = math.sqrt(spread(dy, NOTHING, sizes(y, y, par)))
-    part = _NUDGE / max(size, _NUDGE)
-    losses(cap_chamber(time, y, mode, par), rod_chamber(time, y, mode, par), y[at.V], mode, par, back)
+def losses_change(time: float, y: State, dt: float, dy: State, mode: Row, par: Row, here: Row, out: Row) -> None:
+    """Derivative of the losses in direction (dt, dy) to ``out``, a difference quotient; ``here`` holds those at y."""
+    part = _NUDGE / max(math.sqrt(spread(dy, NOTHING, sizes(y, y, par))), _NUDGE)
     aside = shifted(y, part, dy)
     later = time + part * dt
     losses(cap_chamber(later, aside, mode, par), rod_chamber(later, aside, mode, par), aside[at.V], mode, par, out)
-    for i in range(min(at.N_LOSS, len(total))):
-        total[i] += h * (out[i] - back[i]) / part
-    if len(total) <= at.N_LOSS:
-        return
+    for i in range(at.N_LOSS):
+        out[i] = (out[i] - here[i]) / part
+
+
+def transfers_change(time: float, y: State, dt: float, dy: State, mode: Row, par: Row, out: Row) -> None:
+    """Derivative of the transfers in direction (dt, dy) to ``out``; exact, so that balances close."""
     dpart = dt / mode[at.OPEN_OVER] if time - mode[at.SWITCHED] < mode[at.OPEN_OVER] else 0.0
     air1 = cap_tangent(time, y, mode, par)
     air2 = rod_tangent(time, y, mode, par)
@@ -142,24 +132,35 @@ def tally_change(
     carried1 = air1.temp * cap.outflow + air1.part * air1.outflow * cap.temp
     carried2 = air2.temp * rod.outflow + air2.part * air2.outflow * rod.temp
     transfers(cap, rod, carried1, carried2, mode, out)
-    for i in range(at.N_LOSS, at.N_INTEGRAL):
-        total[i] += h * out[i]
 
 
-def book_explicit(time: float, h: float, step: Step, mode: Row, par: Row, out: Row, gain: Row, error: Row) -> None:
-    """Integrals over an explicit step to ``gain``, their step error to ``error``."""
+def book_explicit(time: float, h: float, step: Step, mode: Row, par: Row, work: Table, gain: Row) -> float:
+    """Integrals over an explicit step to ``gain``; returns the largest step error among those watched. [J]"""
     s1, _, s3, s4, s5, s6 = step.stages
-    tally(time, s1, h * dopri.B1, h * dopri.E1, mode, par, out, gain, error)
-    tally(time + h * dopri.T3, s3, h * dopri.B3, h * dopri.E3, mode, par, out, gain, error)
-    tally(time + h * dopri.T4, s4, h * dopri.B4, h * dopri.E4, mode, par, out, gain, error)
-    tally(time + h * dopri.T5, s5, h * dopri.B5, h * dopri.E5, mode, par, out, gain, error)
-    tally(time + h, s6, h * dopri.B6, h * dopri.E6, mode, par, out, gain, error)
-    tally(time + h, step.y, 0.0, h * dopri.E7, mode, par, out, gain, error)
+    r1, r3, r4, r5, r6, r7 = work[0], work[1], work[2], work[3], work[4], work[5]
+    integrands(time, s1, mode, par, r1)
+    integrands(time + h * dopri.T3, s3, mode, par, r3)
+    integrands(time + h * dopri.T4, s4, mode, par, r4)
+    integrands(time + h * dopri.T5, s5, mode, par, r5)
+    integrands(time + h, s6, mode, par, r6)
+    integrands(time + h, step.y, mode, par, r7)
+    for i in range(at.N_INTEGRAL):
+        gain[i] = h * (
+            dopri.B1 * r1[i] + dopri.B3 * r3[i] + dopri.B4 * r4[i] + dopri.B5 * r5[i] + dopri.B6 * r6[i]
+        )  # fmt: skip
+    worst = 0.0
+    for i in range(at.N_WATCHED):
+        error = h * (
+            dopri.E1 * r1[i] + dopri.E3 * r3[i] + dopri.E4 * r4[i]
+            + dopri.E5 * r5[i] + dopri.E6 * r6[i] + dopri.E7 * r7[i]
+        )  # fmt: skip
+        worst = max(worst, abs(error))
+    return worst
 
 
 def weighted(u: Stages, w1: float, w2: float, w3: float, w4: float, w5: float, w6: float) -> State:
     """Sum of the increments in these weights."""
-    total = shifted(NOTHING, w1, u[0])
+    total = scaled(w1, u[0])
     total = shifted(total, w2, u[1])
     total = shifted(total, w3, u[2])
     total = shifted(total, w4, u[3])
@@ -167,39 +168,41 @@ def weighted(u: Stages, w1: float, w2: float, w3: float, w4: float, w5: float, w
     return shifted(total, w6, u[5])
 
 
-def book_implicit(
-    time: float, h: float, step: Step, mode: Row, par: Row, out: Row, back: Row, gain: Row, error: Row
-) -> None:
-    """Integrals over an implicit step to ``gain``, their step error to ``error``; the derivatives' share as well."""
+def book_implicit(time: float, h: float, step: Step, mode: Row, par: Row, work: Table, gain: Row) -> float:
+    """As :func:`book_explicit` over an implicit step, which has a share of the integrands' derivatives as well."""
     s1, s2, s3, s4, s5, s6 = step.stages
-    tally(time, s1, h * rodas.B1, h * rodas.E1, mode, par, out, gain, error)
-    tally(time + h * rodas.T2, s2, h * rodas.B2, h * rodas.E2, mode, par, out, gain, error)
-    tally(time + h * rodas.T3, s3, h * rodas.B3, h * rodas.E3, mode, par, out, gain, error)
-    tally(time + h * rodas.T4, s4, h * rodas.B4, h * rodas.E4, mode, par, out, gain, error)
-    tally(time + h, s5, h * rodas.B5, h * rodas.E5, mode, par, out, gain, error)
-    tally(time + h, s6, h * rodas.B6, h * rodas.E6, mode, par, out, gain, error)
-    u = step.increments
+    r1, r2, r3, r4, r5, r6 = work[0], work[1], work[2], work[3], work[4], work[5]
+    integrands(time, s1, mode, par, r1)
+    integrands(time + h * rodas.T2, s2, mode, par, r2)
+    integrands(time + h * rodas.T3, s3, mode, par, r3)
+    integrands(time + h * rodas.T4, s4, mode, par, r4)
+    integrands(time + h, s5, mode, par, r5)
+    integrands(time + h, s6, mode, par, r6)
+    u, change = step.increments, work[6]
     ahead = weighted(u, rodas.B1, rodas.B2, rodas.B3, rodas.B4, rodas.B5, rodas.B6)
-    tally_change(time, s1, h * rodas.BD, ahead, h, mode, par, out, back, gain)
-    ahead = weighted(u, rodas.E1, rodas.E2, rodas.E3, rodas.E4, rodas.E5, rodas.E6)
-    tally_change(time, s1, h * rodas.ED, ahead, h, mode, par, out, back, error)
-
-
-def book(
-    time: float, h: float, implicit: bool, step: Step, mode: Row, par: Row, work: Row, gain: Row, error: Row
-) -> float:
-    """Integrals over a step to ``gain``; their largest step error over 0.3 of the cycle's exergy is returned. [1]"""
+    losses_change(time, s1, h * rodas.BD, ahead, mode, par, r1, change)
+    transfers_change(time, s1, h * rodas.BD, ahead, mode, par, change)
     for i in range(at.N_INTEGRAL):
-        gain[i] = 0.0
-    for i in range(at.N_WATCHED):
-        error[i] = 0.0
-    out = work[: at.N_INTEGRAL]
-    back = work[at.N_INTEGRAL :]
-    if implicit:
-        book_implicit(time, h, step, mode, par, out, back, gain, error)
-    else:
-        book_explicit(time, h, step, mode, par, out, gain, error)
+        gain[i] = h * (
+            rodas.B1 * r1[i] + rodas.B2 * r2[i] + rodas.B3 * r3[i]
+            + rodas.B4 * r4[i] + rodas.B5 * r5[i] + rodas.B6 * r6[i] + change[i]
+        )  # fmt: skip
+    ahead = weighted(u, rodas.E1, rodas.E2, rodas.E3, rodas.E4, rodas.E5, rodas.E6)
+    losses_change(time, s1, h * rodas.ED, ahead, mode, par, r1, change)
     worst = 0.0
     for i in range(at.N_WATCHED):
-        worst = max(worst, abs(error[i]))
+        error = h * (
+            rodas.E1 * r1[i] + rodas.E2 * r2[i] + rodas.E3 * r3[i]
+            + rodas.E4 * r4[i] + rodas.E5 * r5[i] + rodas.E6 * r6[i] + change[i]
+        )  # fmt: skip
+        worst = max(worst, abs(error))
+    return worst
+
+
+def book(time: float, h: float, implicit: bool, step: Step, mode: Row, par: Row, work: Table, gain: Row) -> float:
+    """Integrals over a step to ``gain``; returns their largest step error over 0.3 of the cycle's exergy. [1]"""
+    if implicit:
+        worst = book_implicit(time, h, step, mode, par, work, gain)
+    else:
+        worst = book_explicit(time, h, step, mode, par, work, gain)
     return worst / (0.3 * par[at.LEDGER_SCALE])

@@ -228,5 +228,5 @@ def gather(cases: Sequence[Case], *, compiled: bool, way: float = 0.0, history: 
         before=row([[0.0] * at.N_STATE for _ in cases]),
         history=empty(MOST_HISTORY * at.HISTORY_WIDTH if history else 0),
         events=empty(at.MAX_EVENTS * at.EVENT_WIDTH),
-        work=empty(at.N_WORK),
+        work=row([[0.0] * at.N_INTEGRAL for _ in range(at.N_WORK)]),
     )

@@ -13,30 +13,34 @@ from actuator.air.gas import CP, CV, GAMMA, R_AIR
 from actuator.flow.scalar import passage, passage_slope
 from actuator.mechanics.friction import running_slope
 from actuator.stroke import layout as at
-from actuator.stroke.equations import Chamber, Row, State, opening
+from actuator.stroke.equations import Chamber, opening
+from actuator.stroke.states import Row, State
 
 _GAMMA_1 = GAMMA - 1.0
 
 
 class Tangent(NamedTuple):
-    """A chamber at one state, and how its open valve's flows depend on its pressure."""
+    """A chamber at one state and its slopes; _p: by its pressure, _u and _m: by energy and mass, _v: by volume."""
 
-    m: float
-    u: float
-    volume: float
     growth: float
     wall: float
     part: float
     p: float
+    p_v: float
+    p_u: float
     temp: float
+    temp_m: float
+    temp_u: float
     inflow: float
     """At full opening. [kg/s]"""
     outflow: float
     """At full opening. [kg/s]"""
     inflow_p: float
-    """Derivative by the chamber's pressure, at full opening. [kg/(s·Pa)]"""
+    """At full opening. [kg/(s·Pa)]"""
     outflow_p: float
-    """Derivative by the chamber's pressure, at full opening. [kg/(s·Pa)]"""
+    """At full opening. [kg/(s·Pa)]"""
+    outflow_t: float
+    """By the temperature, at full opening. [kg/(s·K)]"""
     port_temp: float
 
 
@@ -63,29 +67,42 @@ class Jacobian(NamedTuple):
     rod: Block
 
 
-class Factors(NamedTuple):
-    """A block of g·I - J eliminated: m and U of a chamber as functions of right-hand side, x and v."""
+class Slopes(NamedTuple):
+    """Derivatives of the rates by the six states and by time."""
 
-    pivot_u: float
-    pivot_m: float
-    ratio: float
+    jacobian: Jacobian
+    by_time: State
+
+
+NO_BLOCK = Block(0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0)
+NO_SLOPES = Slopes(Jacobian(0.0, 0.0, 0.0, 0.0, NO_BLOCK, NO_BLOCK), (0.0, 0.0, 0.0, 0.0, 0.0, 0.0))
+
+
+class Inverse(NamedTuple):
+    """A chamber's two rows of g·I - J solved: increments of m and U from right-hand sides and the speed's increment."""
+
+    m_m: float
+    m_u: float
     m_x: float
     m_v: float
+    u_m: float
+    u_u: float
     u_x: float
     u_v: float
-    u_m: float
 
 
 class System(NamedTuple):
-    """g·I - J, eliminated as far as the right-hand side allows."""
+    """g·I - J solved: the speed's increment from all right-hand sides, then the others from theirs and the speed's."""
 
-    g: float
-    a_x: float
-    pivot_v: float
-    a_u1: float
-    a_u2: float
-    cap: Factors
-    rod: Factors
+    x: float
+    v_x: float
+    v_v: float
+    v_m1: float
+    v_u1: float
+    v_m2: float
+    v_u2: float
+    cap: Inverse
+    rod: Inverse
 
 
 def tangent(
@@ -103,18 +120,23 @@ def tangent(
     if port > p:
         c, b, index = mode[link + at.INTO], mode[link + at.INTO + 1], mode[link + at.INTO + 2]
         inflow = passage(port, p, port_temp, c, b, index)
-        inflow_p = passage_slope(port, p, port_temp, c, b, index)
+        inflow_p = passage_slope(inflow, port, p, port_temp, c, b, index)
     else:
         c, b, index = mode[link + at.OUT_OF], mode[link + at.OUT_OF + 1], mode[link + at.OUT_OF + 2]
         outflow = passage(p, port, temp, c, b, index)
-        outflow_p = (outflow - port * passage_slope(p, port, temp, c, b, index)) / p
-    return Tangent(m, u, volume, growth, wall, part, p, temp, inflow, outflow, inflow_p, outflow_p, port_temp)
+        outflow_p = (outflow - port * passage_slope(outflow, p, port, temp, c, b, index)) / p
+    return Tangent(
+        growth, wall, part,
+        p, -p / volume, p / u,
+        temp, -temp / m, temp / u,
+        inflow, outflow, inflow_p, outflow_p, -0.5 * outflow / temp, port_temp,
+    )  # fmt: skip
 
 
 def vented_tangent(growth: float, par: Row) -> Tangent:
-    """A side that is open to the atmosphere: a chamber without bounds, which nothing changes."""
-    far = math.inf
-    return Tangent(far, far, far, growth, 0.0, 0.0, par[at.P_AMB], par[at.T_AMB], 0.0, 0.0, 0.0, 0.0, par[at.T_AMB])
+    """A side that is open to the atmosphere: nothing changes it; told by its wall, which is 0."""
+    p0, t0 = par[at.P_AMB], par[at.T_AMB]
+    return Tangent(growth, 0.0, 0.0, p0, 0.0, 0.0, t0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0, t0)
 
 
 def cap_tangent(time: float, y: State, mode: Row, par: Row) -> Tangent:
@@ -151,12 +173,12 @@ def chamber_change(
         Direction: position, speed, mass, energy, opening. [m, m/s, kg, J, 1]
     """
     dwall = math.copysign(math.pi * par[at.BORE], area) * dx
-    dp = air.p * (du / air.u - area * dx / air.volume)
-    dtemp = air.temp * (du / air.u - dm / air.m)
+    dp = air.p_u * du + air.p_v * area * dx
+    dtemp = air.temp_u * du + air.temp_m * dm
     dinflow = air.part * air.inflow_p * dp + air.inflow * dpart
-    doutflow = air.part * (air.outflow_p * dp - 0.5 * air.outflow * dtemp / air.temp) + air.outflow * dpart
+    doutflow = air.part * (air.outflow_p * dp + air.outflow_t * dtemp) + air.outflow * dpart
     dpower = dp * air.growth + air.p * area * dv
-    if air.volume == math.inf:
+    if air.wall == 0.0:
         dheat = 0.0
     elif par[at.INDEX] == 0.0:
         dheat = par[at.HEAT] * (dwall * (par[at.T_AMB] - air.temp) - air.wall * dtemp)
@@ -174,8 +196,8 @@ def energy_change(air: Tangent, change: Chamber) -> float:
 
 def block(air: Tangent, area: float, par: Row) -> Block:
     """Columns of a chamber's rates, each the change in one direction."""
-    if air.volume == math.inf:
-        return Block(0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0)
+    if air.wall == 0.0:
+        return NO_BLOCK
     by_x = chamber_change(air, area, 1.0, 0.0, 0.0, 0.0, 0.0, par)
     by_v = chamber_change(air, area, 0.0, 1.0, 0.0, 0.0, 0.0, par)
     by_m = chamber_change(air, area, 0.0, 0.0, 1.0, 0.0, 0.0, par)
@@ -201,10 +223,8 @@ def jacobian(cap: Tangent, rod: Tangent, y: State, mode: Row, par: Row) -> Jacob
         return Jacobian(0.0, 0.0, 0.0, 0.0, cap_block, rod_block)
     rubbing = running_slope(direction * y[at.V], par[at.BREAKAWAY], par[at.COULOMB], par[at.VISCOUS], par[at.STRIBECK])
     mass = par[at.MASS]
-    by_x = -(cap.p * area1 * area1 / cap.volume + rod.p * area2 * area2 / rod.volume - par[at.SPRING_RATE]) / mass
-    by_u1 = cap.p / cap.u * area1 / mass
-    by_u2 = -rod.p / rod.u * area2 / mass
-    return Jacobian(by_x, -rubbing / mass, by_u1, by_u2, cap_block, rod_block)
+    by_x = (cap.p_v * area1 * area1 + rod.p_v * area2 * area2 + par[at.SPRING_RATE]) / mass
+    return Jacobian(by_x, -rubbing / mass, cap.p_u * area1 / mass, -rod.p_u * area2 / mass, cap_block, rod_block)
 
 
 def ramp(cap: Tangent, rod: Tangent, time: float, mode: Row, par: Row) -> State:
@@ -224,42 +244,55 @@ def ramp(cap: Tangent, rod: Tangent, time: float, mode: Row, par: Row) -> State:
     )
 
 
-def eliminate(g: float, own: Block) -> Factors:
-    """Eliminate a chamber's two rows of g·I - J, the energy first: heat and flow make its pivot large."""
+def slopes_at(time: float, y: State, mode: Row, par: Row) -> Slopes:
+    """Derivatives of the rates at one state."""
+    cap = cap_tangent(time, y, mode, par)
+    rod = rod_tangent(time, y, mode, par)
+    return Slopes(jacobian(cap, rod, y, mode, par), ramp(cap, rod, time, mode, par))
+
+
+def inverse(g: float, own: Block) -> Inverse:
+    """Solve a chamber's two rows, the energy eliminated first: heat and flow make its pivot large."""
     pivot_u = 1.0 / (g - own.u_u)
     ratio = own.m_u * pivot_u
-    pivot_m = 1.0 / (g - own.m_m - ratio * own.u_m)
-    m_x = (own.m_x + ratio * own.u_x) * pivot_m
-    m_v = ratio * own.u_v * pivot_m
-    u_x = (own.u_x + own.u_m * m_x) * pivot_u
-    u_v = (own.u_v + own.u_m * m_v) * pivot_u
-    return Factors(pivot_u, pivot_m, ratio, m_x, m_v, u_x, u_v, own.u_m)
+    m_m = 1.0 / (g - own.m_m - ratio * own.u_m)
+    m_x = (own.m_x + ratio * own.u_x) * m_m / g
+    u_x = (own.u_x / g + own.u_m * m_x) * pivot_u
+    # x itself follows the speed: x = (right-hand side + v)/g
+    m_v = m_x + ratio * own.u_v * m_m
+    u_v = (own.u_x / g + own.u_v + own.u_m * m_v) * pivot_u
+    u_m = own.u_m * m_m * pivot_u
+    return Inverse(m_m, ratio * m_m, m_x, m_v, u_m, (1.0 + own.u_m * ratio * m_m) * pivot_u, u_x, u_v)
 
 
 def system(g: float, jac: Jacobian) -> System:
-    """Eliminate g·I - J down to the row of the speed. ``g`` in [1/s]."""
-    cap = eliminate(g, jac.cap)
-    rod = eliminate(g, jac.rod)
-    a_x = jac.a_x + jac.a_u1 * cap.u_x + jac.a_u2 * rod.u_x
-    a_v = jac.a_v + jac.a_u1 * cap.u_v + jac.a_u2 * rod.u_v
-    return System(g, a_x, 1.0 / (g - a_v - a_x / g), jac.a_u1, jac.a_u2, cap, rod)
+    """Solve g·I - J for any right-hand side. ``g`` in [1/s]."""
+    cap = inverse(g, jac.cap)
+    rod = inverse(g, jac.rod)
+    by_x = jac.a_x / g + jac.a_u1 * cap.u_x + jac.a_u2 * rod.u_x
+    by_v = jac.a_v + jac.a_x / g + jac.a_u1 * cap.u_v + jac.a_u2 * rod.u_v
+    v_v = 1.0 / (g - by_v)
+    v_1 = v_v * jac.a_u1
+    v_2 = v_v * jac.a_u2
+    return System(
+        1.0 / g, v_v * by_x, v_v, v_1 * cap.u_m, v_1 * cap.u_u, v_2 * rod.u_m, v_2 * rod.u_u, cap, rod
+    )  # fmt: skip
 
 
 def solve(left: System, right: State) -> State:
     """Solution u of (g·I - J)·u = right."""
     cap, rod = left.cap, left.rod
     rx, rv, rm1, ru1, rm2, ru2 = right
-    m1 = (rm1 + cap.ratio * ru1) * cap.pivot_m
-    m2 = (rm2 + rod.ratio * ru2) * rod.pivot_m
-    u1 = (ru1 + cap.u_m * m1) * cap.pivot_u
-    u2 = (ru2 + rod.u_m * m2) * rod.pivot_u
-    v = (rv + left.a_u1 * u1 + left.a_u2 * u2 + left.a_x * rx / left.g) * left.pivot_v
-    x = (rx + v) / left.g
+    v = (
+        (left.v_x * rx + left.v_v * rv)
+        + (left.v_m1 * rm1 + left.v_u1 * ru1)
+        + (left.v_m2 * rm2 + left.v_u2 * ru2)
+    )  # fmt: skip
     return (
-        x,
+        (rx + v) * left.x,
         v,
-        m1 + cap.m_x * x + cap.m_v * v,
-        u1 + cap.u_x * x + cap.u_v * v,
-        m2 + rod.m_x * x + rod.m_v * v,
-        u2 + rod.u_x * x + rod.u_v * v,
+        (cap.m_m * rm1 + cap.m_u * ru1 + cap.m_x * rx) + cap.m_v * v,
+        (cap.u_m * rm1 + cap.u_u * ru1 + cap.u_x * rx) + cap.u_v * v,
+        (rod.m_m * rm2 + rod.m_u * ru2 + rod.m_x * rx) + rod.m_v * v,
+        (rod.u_m * rm2 + rod.u_u * ru2 + rod.u_x * rx) + rod.u_v * v,
     )
