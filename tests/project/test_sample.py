@@ -194,4 +194,5 @@ def test_the_demo_plant_checks_clean_and_says_that_it_is_invented() -> None:
         "Pusher",
         "Lift",
         "Clamp",
+        "Stopper",
     ]

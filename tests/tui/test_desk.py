@@ -205,7 +205,7 @@ async def test_the_mouse_puts_the_reading_line_and_chooses_figures_and_workspace
         assert row is not None
         assert row.name == app.desk.query_one("#motion", Figures).chosen == "actuator/settled_time"
         await pilot.click("#chooser", offset=(1, 0))
-        assert app.place.name == "Lid press / Clamp"
+        assert app.place.name == "Lid press / Stopper"
         await pilot.click("#keys", offset=(1, 0))
         await pilot.pause()
         assert isinstance(app.screen, Reader)
@@ -215,9 +215,9 @@ async def test_another_actuator_is_chosen_by_key_and_by_list_and_its_fields_are_
     app = Quick(plant())
     async with app.run_test(size=(120, 36)) as pilot:
         await settled(app, pilot)
-        assert shows(app, "Tray packer / Pusher", "1 of 3")
+        assert shows(app, "Tray packer / Pusher", "1 of 4")
         await pilot.press("f8")
-        assert shows(app, "Tray packer / Lift", "2 of 3")
+        assert shows(app, "Tray packer / Lift", "2 of 4")
         lift = BORE.replace("actuator.1", "actuator.2")
         assert field(app, lift).value == app.session.text(lift) == "63 mm"
         field(app, lift).focus()
@@ -239,7 +239,7 @@ async def test_another_actuator_is_chosen_by_key_and_by_list_and_its_fields_are_
         assert app.place.name == "Lid press / Clamp"
         app.session = app.session.edited("machine.2.actuator.1.name", "Squeezer")
         await pilot.pause()
-        assert shows(app, "Lid press / Squeezer", "3 of 3")
+        assert shows(app, "Lid press / Squeezer", "3 of 4")
 
 
 async def test_choices_are_picked_from_a_list_or_turned_through() -> None:
