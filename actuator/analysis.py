@@ -34,6 +34,7 @@ from actuator.results import (
 from actuator.scatter.hazards import hazards
 from actuator.scatter.pair import worst_pair
 from actuator.statics import rod_column, static_forces
+from actuator.stroke.compiled import expect
 from actuator.stroke.dynamics import dynamics
 from actuator.stroke.result import Path, StrokeResult
 from actuator.stroke.rows import parameters
@@ -59,6 +60,10 @@ __all__ = [
     "never",
     "varied_result",
 ]
+
+
+STROKES = 3
+"""Simulations of an actuator: as it is, and both of the worst-case pair. [1]"""
 
 
 def never() -> bool:
@@ -326,6 +331,11 @@ def analyse(project: Project, previous: Analysis | None = None, cancelled: Calla
             price_per_anr=per_anr * project.money.energy,
             how=work.how,
         )
+    asked = [(machine, actuator) for machine in project.machines for actuator in machine.actuators]
+    taken_over = sum(
+        any(old.part == actuator for old in _known(project, machine, previous)) for machine, actuator in asked
+    )
+    expect(STROKES * (len(asked) - taken_over))
     machines = []
     for machine in project.machines:
         known = _known(project, machine, previous)

@@ -230,6 +230,20 @@ def prepare(wait: bool = False) -> None:
         loader.join()
 
 
+def expect(strokes: int) -> None:
+    """Make ready for so many strokes: past ``PATIENCE`` a warm cache is loaded first, which takes less than they do.
+
+    Parameters
+    ----------
+    strokes : int
+        That are about to be simulated. [1]
+    """
+    if strokes <= PATIENCE:
+        return
+    folder = cache_folder()
+    prepare(wait=folder is not None and _ready_mark(folder).exists())
+
+
 def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
     """Pick the ``settle`` to call, and tell whether it is the compiled one.
 
