@@ -6,6 +6,7 @@ at one file only, so its folder is named by a hash over every source file that i
 
 from __future__ import annotations
 
+import contextlib
 import hashlib
 import importlib.metadata
 import importlib.util
@@ -14,6 +15,7 @@ import subprocess
 import sys
 import tempfile
 import threading
+import time
 import types
 from collections.abc import Callable
 from dataclasses import dataclass
@@ -45,6 +47,8 @@ _INLINED = (scalar, friction, states, equations, slopes)
 _MODULES = (*_INLINED, layout, dopri, rodas, steppers, ledger, events, advance, cycle, batch)
 PATIENCE = 6
 """Strokes that a process computes interpreted before it begins to load the compiled kernel: loading costs more. [1]"""
+PATIENT_FOR = 180.0
+"""Time after which a process that began to compile is taken for dead. [s]"""
 _OFF = "ACTUATOR_INTERPRETED"
 """Environment variable: set to anything, the kernel is never compiled."""
 
@@ -105,6 +109,19 @@ def cache_folder() -> Path | None:
 
 def _ready_mark(folder: Path) -> Path:
     return folder / "ready"
+
+
+def _claim(folder: Path) -> bool:
+    """Whether no other process fills this cache: the first one leaves a mark, which lapses after ``PATIENT_FOR``."""
+    mark = folder / "claimed"
+    try:
+        with contextlib.suppress(FileNotFoundError):
+            if time.time() - mark.stat().st_mtime > PATIENT_FOR:
+                mark.unlink()
+        mark.touch(exist_ok=False)
+    except OSError:
+        return False
+    return True
 
 
 def _options(function: types.FunctionType, cached: bool) -> dict[str, Any]:
@@ -216,7 +233,8 @@ def prepare(wait: bool = False) -> None:
             warm = folder is not None and _ready_mark(folder).exists()
             if not warm and not wait and folder is not None:
                 if _state.child is None:
-                    _state.child = _compile_in_child()
+                    if _claim(folder):
+                        _state.child = _compile_in_child()
                     return
                 if _state.child.poll() is None:
                     return
