@@ -17,6 +17,7 @@ from actuator.report.streams import emit, ending_cleanly, is_unicode, silence
 if TYPE_CHECKING:
     from actuator.answer import Answer
     from actuator.project.document import Document
+    from actuator.report.bands_view import Scatters
     from actuator.unit_table import System
 
 DONE, PROBLEMS, USAGE, FAILED, INTERRUPTED = 0, 1, 2, 3, 130
@@ -151,10 +152,15 @@ def run_assess(arguments: argparse.Namespace) -> int:
 
     answer = _answer(arguments)
     problems = answer if isinstance(answer, tuple) else ()
+    scatters = None if isinstance(answer, tuple) or not arguments.bands else _scatters(answer)
     if arguments.json:
         from actuator.report.json_view import as_data, as_json, problems_as_data
 
-        data = problems_as_data(answer) if isinstance(answer, tuple) else as_data(answer, histories=arguments.histories)
+        data = (
+            problems_as_data(answer)
+            if isinstance(answer, tuple)
+            else as_data(answer, histories=arguments.histories, scatters=scatters)
+        )
         _out(as_json(data, ascii_only=not is_unicode(sys.stdout)))
         if problems:
             return PROBLEMS
@@ -164,12 +170,23 @@ def run_assess(arguments: argparse.Namespace) -> int:
     if arguments.csv:
         from actuator.report.csv_view import as_csv
 
-        _out(as_csv(answer.analysis))
+        _out(as_csv(answer.analysis, scatters))
     elif not arguments.json:
         from actuator.report.text import as_text
 
-        _out(as_text(answer, _system(arguments)))
+        _out(as_text(answer, _system(arguments), scatters))
     return DONE if all_met(answer.analysis) else FAILED
+
+
+def _scatters(answer: Answer) -> Scatters:
+    """Tolerance bands of every actuator, the exergy ledger's too; compiles the kernel first."""
+    from actuator.report.scatter import bands_of
+
+    assert answer.analysis is not None
+    places = [
+        (number, index) for number, item in enumerate(answer.analysis.machines) for index in range(len(item.actuators))
+    ]
+    return {place: bands_of(answer, *place, ledger=True, wait=True) for place in places}
 
 
 def run_explain(arguments: argparse.Namespace) -> int:
@@ -271,6 +288,7 @@ def _parser() -> argparse.ArgumentParser:
     form = made.add_mutually_exclusive_group()
     form.add_argument("--json", action="store_true", help="JSON, numbers in SI")
     form.add_argument("--csv", action="store_true", help="one row a figure, numbers in SI")
+    made.add_argument("--bands", action="store_true", help="with tolerance bands P5, P50, P95 under the stated spread")
     made.add_argument("--histories", action="store_true", help="with --json: time histories and p-V points")
     settings(made)
     units(made)

@@ -6,6 +6,7 @@ import csv
 import io
 
 from actuator.errors import Refusal
+from actuator.report.bands_view import LEVELS, Scatters, csv_cells
 from actuator.report.figures import si_unit
 from actuator.report.names import all_figures
 from actuator.results import Analysis
@@ -13,12 +14,14 @@ from actuator.results import Analysis
 HEADER = ("machine", "actuator", "figure", "value", "unit", "refused")
 
 
-def as_csv(analysis: Analysis) -> str:
+def as_csv(analysis: Analysis, scatters: Scatters | None = None) -> str:
     """All figures, unrounded and in SI.
 
     Parameters
     ----------
     analysis : Analysis
+    scatters : Scatters, optional
+        Tolerance bands; three columns more, empty for figures without one.
 
     Returns
     -------
@@ -28,14 +31,13 @@ def as_csv(analysis: Analysis) -> str:
     """
     out = io.StringIO()
     writer = csv.writer(out, lineterminator="\n")
-    writer.writerow(HEADER)
+    writer.writerow(HEADER if scatters is None else (*HEADER, *LEVELS))
     currency = analysis.project.money.currency
     for item in all_figures(analysis):
         machine, actuator = (*item.at.owner, "", "")[:2]
         value = item.figure.value(item.at)
         unit = si_unit(item.figure.kind, currency)
-        if isinstance(value, Refusal):
-            writer.writerow((machine, actuator, item.figure.key, "", unit, value.reason))
-        else:
-            writer.writerow((machine, actuator, item.figure.key, repr(value), unit, ""))
+        band = () if scatters is None else csv_cells(item.at, item.figure.key, scatters)
+        number, reason = ("", value.reason) if isinstance(value, Refusal) else (repr(value), "")
+        writer.writerow((machine, actuator, item.figure.key, number, unit, reason, *band))
     return out.getvalue()

@@ -10,8 +10,9 @@ from typing import Any
 from actuator.answer import Answer
 from actuator.cautions import Caution
 from actuator.errors import Problem, Refusal
-from actuator.report import holding_view
-from actuator.report.figures import FIGURES, At, completed
+from actuator.report import bands_view, holding_view
+from actuator.report.bands_view import Scatters
+from actuator.report.figures import FIGURES, At, completed, worst
 from actuator.results import ActuatorResult, Analysis, Criterion, MachineResult
 from actuator.stroke.result import StrokeResult
 
@@ -83,12 +84,14 @@ def _histories(stroke: StrokeResult) -> Tree:
     return {key: getattr(stroke, name).tolist() for name, key in HISTORIES.items()}
 
 
-def _actuator(at: At, histories: bool) -> Tree:
+def _actuator(at: At, histories: bool, scatters: Scatters) -> Tree:
     result: ActuatorResult = at.actuator
     tree: Tree = {"name": result.part.name, **_figures(at, money=False)}
     reached = tree["extend"]["position_reached_m"]
     for direction in ("extend", "retract"):
         tree[direction]["completed"] = completed(at, direction)
+        for case in worst.CASES:
+            tree["worst"][case][direction]["completed"] = worst.completed(at, case, direction)
     tree["rod"]["rule"] = result.rod.rule
     tree["indicator"]["direction"] = result.indicator.direction
     tree["indicator"]["remarks"] = list(result.indicator.remarks)
@@ -111,17 +114,21 @@ def _actuator(at: At, histories: bool) -> Tree:
             tree["histories"] = _histories(result.stroke)
             if not isinstance(result.dynamics, Refusal):
                 tree["histories"]["force_N"] = result.dynamics.force.tolist()
+    if at.machine_index is not None and at.actuator_index is not None:
+        scatter = scatters.get((at.machine_index, at.actuator_index))
+        tree |= bands_view.as_tree(scatter) if scatter is not None else {}
     if histories:
         tree["indicator"] |= {key: list(getattr(result.indicator, name)) for name, key in DIAGRAM.items()}
     return tree
 
 
-def _machine(analysis: Analysis, number: int, histories: bool) -> Tree:
+def _machine(analysis: Analysis, number: int, histories: bool, scatters: Scatters) -> Tree:
     machine: MachineResult = analysis.machines[number]
+    places = [At(analysis, number, index) for index in range(len(machine.actuators))]
     return {
         "name": machine.part.name,
         "quantity": machine.part.quantity,
-        "actuators": [_actuator(At(analysis, number, index), histories) for index in range(len(machine.actuators))],
+        "actuators": [_actuator(at, histories, scatters) for at in places],
         **_figures(At(analysis, number), money=False),
     }
 
@@ -160,7 +167,7 @@ def problems_as_data(problems: Sequence[Problem]) -> Tree:
     return {"problems": rows, "machines": []}
 
 
-def as_data(answer: Answer, *, histories: bool = False) -> Tree:
+def as_data(answer: Answer, *, histories: bool = False, scatters: Scatters | None = None) -> Tree:
     """An answer as plain lists, dicts, texts and numbers.
 
     Parameters
@@ -168,6 +175,8 @@ def as_data(answer: Answer, *, histories: bool = False) -> Tree:
     answer : Answer
     histories : bool, optional
         With the time histories of every actuator and the points of its ideal diagram.
+    scatters : Scatters, optional
+        Tolerance bands, of the actuators that have some.
 
     Returns
     -------
@@ -179,7 +188,7 @@ def as_data(answer: Answer, *, histories: bool = False) -> Tree:
         return problems_as_data(answer.problems)
     data: Tree = {
         "problems": [],
-        "machines": [_machine(analysis, number, histories) for number in range(len(analysis.machines))],
+        "machines": [_machine(analysis, number, histories, scatters or {}) for number in range(len(analysis.machines))],
         **_figures(At(analysis), money=False),
         "money": _money(analysis),
         "remarks": list(analysis.remarks),

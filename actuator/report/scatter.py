@@ -26,6 +26,8 @@ BANDED = ("extend.", "retract.", "cycle.", "static.", "rod.", "money.")
 """Beginnings of the keys of figures that have bands: those of the sections that are computed anew at each point."""
 OF_LEDGER = ("cycle.exergy", "cycle.exhaust_loss", "cycle.upstream")
 """Beginnings of the keys of figures that need the ledger."""
+OF_STEPS = ("residual", "stored_change")
+"""Last steps of keys of figures that only tell how finely the cycle was computed."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -52,7 +54,7 @@ def scattered(*, ledger: bool = False) -> tuple[Figure, ...]:
     return tuple(
         figure
         for key, figure in FIGURES["actuator"].items()
-        if key.startswith(BANDED) and (ledger or not key.startswith(OF_LEDGER))
+        if key.startswith(BANDED) and (ledger or not key.startswith(OF_LEDGER)) and not key.endswith(OF_STEPS)
     )
 
 

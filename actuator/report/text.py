@@ -7,9 +7,11 @@ from collections.abc import Callable, Iterable, Sequence
 from actuator.answer import Answer
 from actuator.cautions import DECIDE
 from actuator.errors import Problem, Refusal
-from actuator.report import holding_view
+from actuator.report import bands_view, holding_view
+from actuator.report.bands_view import Scatters
 from actuator.report.figures import FIGURES, At, Figure, completed, flow
 from actuator.report.names import all_figures
+from actuator.report.scatter import Scatter
 from actuator.report.shown import Shown, shown_for
 from actuator.report.tables import WIDTH, cell, groups, line, share_table, table, wrapped
 from actuator.report.verdicts import verdict_line
@@ -107,7 +109,7 @@ def _words(title: str, texts: Iterable[str]) -> list[str]:
     return lines
 
 
-def _actuator(at: At, shown: Shown) -> list[str]:
+def _actuator(at: At, shown: Shown, scatter: Scatter | None) -> list[str]:
     result = at.actuator
     lines = _actuator_heading(at, shown) + _requirements(at, shown)
     special: dict[str, Callable[[Sequence[Figure]], list[str]]] = {
@@ -128,6 +130,7 @@ def _actuator(at: At, shown: Shown) -> list[str]:
             lines += wrapped(result.air.difference)
         if title == "Rod" and result.rod.rule:
             lines += wrapped(f"Rule used: {result.rod.rule}.")
+    lines += bands_view.table(shown, scatter) if scatter is not None else []
     remarks = list(result.remarks) + list(result.indicator.remarks)
     if not isinstance(result.stroke, Refusal):
         remarks += result.stroke.remarks
@@ -153,7 +156,7 @@ def _supply_words(analysis: Analysis) -> list[str]:
     return wrapped(f"Electricity for the air: {compressor.name}, by {analysis.supply.how}.")
 
 
-def as_text(answer: Answer, system: System = "si") -> str:
+def as_text(answer: Answer, system: System = "si", scatters: Scatters | None = None) -> str:
     """Everything about an answer, as tables.
 
     Parameters
@@ -162,6 +165,8 @@ def as_text(answer: Answer, system: System = "si") -> str:
         With an analysis.
     system : {"si", "us"}, optional
         Units to show in.
+    scatters : Scatters, optional
+        Tolerance bands, of the actuators that have some.
 
     Returns
     -------
@@ -180,7 +185,7 @@ def as_text(answer: Answer, system: System = "si") -> str:
     lines = wrapped(project.title, "", "") if project.title else []
     for number, machine in enumerate(analysis.machines):
         for index in range(len(machine.actuators)):
-            lines += _actuator(At(analysis, number, index), shown)
+            lines += _actuator(At(analysis, number, index), shown, (scatters or {}).get((number, index)))
         count = machine.part.quantity
         title = f"{machine.part.name}: the machine" + (f" ({count} of them)" if count > 1 else "")
         lines += _level(title, At(analysis, number), shown)

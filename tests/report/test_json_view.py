@@ -27,6 +27,8 @@ HALF = (
     "release_time_s",
     "unloaded_time_s",
 )
+ONCE = {"release_time_s", "unloaded_time_s"}
+"""Keys of the nominal half stroke only."""
 LEDGER = (
     "supplied",
     "load",
@@ -89,6 +91,31 @@ def test_the_promised_keys_are_there() -> None:
     (money,) = data["money"]["machines"]
     assert set(money) == {"name", "energy_year_J", "cost_year", "carbon_year_kg", "actuators"}
     assert [item["name"] for item in money["actuators"]] == ["Pusher", "Lift.1"]
+
+
+def test_the_worst_case_pair_stands_beside_the_nominal() -> None:
+    given = answer()
+    assert given.analysis is not None
+    pair = given.analysis.machines[0].actuators[0].worst
+    assert not isinstance(pair, Refusal)
+    assert not isinstance(pair.slow.extend, Refusal)
+    assert not isinstance(pair.hard.retract, Refusal)
+    found = as_data(given)["machines"][0]["actuators"][0]["worst"]
+    assert set(found) == {"slow", "hard"}
+    for case in found.values():
+        for way in ("extend", "retract"):
+            assert {key for key in HALF if key.endswith(("time_s", "speed_m_s", "energy_J"))} - ONCE <= set(case[way])
+            assert case[way]["completed"] is True
+    assert found["slow"]["extend"]["stroke_time_s"] == pair.slow.extend.stroke_time
+    assert found["hard"]["retract"]["end_energy_J"] == pair.hard.retract.end_energy
+    assert found["slow"]["retract"]["moved_mass_kg"] == pair.slow.mass_retract
+    assert found["slow"]["static"]["force_reserve_extend"] == pair.slow.force_reserve_extend
+    assert found["slow"]["static"]["force_reserve_retract"] == {"refused": "no load"}
+    assert found["hard"]["rod"]["buckling_safety"] == pair.hard.buckling_safety
+    assert found["hard"]["cycle"]["air_drawn_kg"] == pair.hard.air_drawn
+    lost = as_data(answer(refused=True))["machines"][0]["actuators"][1]["worst"]["slow"]["extend"]
+    assert lost["stroke_time_s"] == {"refused": NO_STROKE.reason}
+    assert lost["completed"] is False
 
 
 def test_each_number_stands_at_its_own_key() -> None:

@@ -136,3 +136,12 @@ def _case(case: str) -> tuple[Figure, ...]:
 
 
 FIGURES: tuple[Figure, ...] = tuple(figure for case in CASES for figure in _case(case))
+
+
+def completed(at: At, case: str, direction: Direction) -> bool:
+    """Whether the piston arrives at that end at the corner of a case; false where it could not be simulated."""
+    pair = at.actuator.worst
+    if isinstance(pair, Refusal):
+        return False
+    half = getattr(getattr(pair, case), direction)
+    return not isinstance(half, Refusal) and bool(half.completed)
