@@ -253,6 +253,12 @@ NOMOGRAM = Source(
     place="table 2, p. 62, example",
     how="seen",
 )
+JCGM_101 = Source(
+    key="jcgm101",
+    title="JCGM 101, Evaluation of measurement data, Supplement 1 to the GUM: propagation of distributions",
+    edition="2008",
+    place="6.4.2, rectangular distribution where only limits are known",
+)
 AIR_POWER = Source(key="air_power", title="Cai, Kagawa et al., papers on the air power of pneumatic systems")
 NAVAL_DECAY = Source(
     key="naval_decay",
@@ -300,6 +306,7 @@ _ALL = (
     ORIFICE_TABLE,
     BEAM_TABLE,
     NOMOGRAM,
+    JCGM_101,
     AIR_POWER,
     NAVAL_DECAY,
 )

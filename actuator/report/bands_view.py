@@ -12,14 +12,17 @@ from actuator.report.shown import Shown
 from actuator.report.tables import head, line, wrapped
 from actuator.report.workings import title
 from actuator.scatter.bands import Band
+from actuator.scatter.points import SCRAMBLING
+from actuator.sources import JCGM_101
 
 Scatters = Mapping[tuple[int, int], Scatter]
 """Bands by 0-based place: machine, actuator."""
 LEVELS = ("p05", "p50", "p95")
 """Names of the three numbers of a band."""
 HOW = (
-    "One sample in twenty lies below P5 and one in twenty above P95. Sampled evenly between the limits that the spread "
-    "states, each field apart from the others (scrambled Sobol points, scipy.stats.qmc)."
+    "One sample in twenty lies below P5 and one in twenty above P95. Each field of the spread is drawn evenly between "
+    f"its limits, apart from the others (scrambled Sobol points of scipy.stats.qmc, scrambling {SCRAMBLING}); mass and "
+    f"the forces of the load move together, and so do all conductances. [{JCGM_101}]"
 )
 
 
@@ -52,10 +55,11 @@ def as_tree(scatter: Scatter) -> dict[str, Any]:
         "bands": bands,
         "scatter": {
             "samples": found.samples,
+            "scrambling": SCRAMBLING,
             "all_met": _share(found.met),
             "all_met_low": _share(found.met_low),
             "all_met_high": _share(found.met_high),
-            "remarks": list(scatter.remarks),
+            "remarks": [HOW, *scatter.remarks],
         },
     }
 

@@ -37,7 +37,7 @@ def deviations(spread: Spread, count: int, scrambling: int = SCRAMBLING) -> tupl
 
     References
     ----------
-    .. [1] JCGM 101:2008, Evaluation of measurement data, Supplement 1 to the GUM, 6.4.2 (from memory).
+    .. [1] JCGM 101:2008, 6.4.2 (from memory).
     """
     from scipy.stats import qmc  # 0.5 s to import: not before bands are asked for
 
