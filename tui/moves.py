@@ -59,7 +59,7 @@ def _step(app: Design, by: int) -> None:
 def _look_at(app: Design, index: int) -> None:
     app.place = places(app.session.document)[index]
     app.show_place()
-    app.show_view()
+    app.call_later(app.show_view)  # the fields first
 
 
 async def choose_place(app: Design) -> None:

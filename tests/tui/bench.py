@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import asyncio
 import time
+from collections.abc import Callable
 from functools import cache
 from pathlib import Path
 from typing import Any
@@ -100,6 +101,14 @@ async def settled(app: Design, pilot: Pilot[Any], limit: float = 60.0) -> None:
         assert time.monotonic() < end, "no answer came"
         await pilot.pause(0.01)
     await pilot.pause()
+
+
+async def until(pilot: Pilot[Any], condition: Callable[[], bool], limit: float = 60.0) -> None:
+    """Wait until a condition holds."""
+    end = time.monotonic() + limit
+    while not condition():
+        assert time.monotonic() < end, "it never came about"
+        await pilot.pause(0.01)
 
 
 async def drain(app: Design, rounds: int = 3) -> None:

@@ -11,7 +11,7 @@ from textual.screen import Screen
 from textual.widget import Widget
 from textual.widgets import Static
 
-from tests.tui.bench import BORE, SIZES, Quick, field, one, plant, seen, settled
+from tests.tui.bench import BORE, SIZES, Quick, field, one, plant, seen, settled, until
 from tui.actions import key_line
 from tui.widgets.field import Field
 from tui.widgets.keys import Keys
@@ -67,8 +67,7 @@ async def scrolled(app: Quick, pilot: Pilot[Any]) -> None:
     """The last field and the last figure can be brought into view."""
     last = [item for item in app.desk.query(Field) if item.display][-1]
     last.focus()
-    await pilot.pause()
-    assert last.region.bottom <= app.desk.query_one("#sheet").region.bottom
+    await until(pilot, lambda: last.region.bottom <= app.desk.query_one("#sheet").region.bottom)
     assert last.spec.label in "\n".join(seen(app))
     await pilot.press("f6", "end")
     await pilot.pause()

@@ -131,14 +131,21 @@ class Desk(Screen[None]):
 
     def show_view(self, answer: Answer, place: Place, system: System, pin: Answer | None, glyphs: Glyphs) -> None:
         """Show the figures of one actuator of an answer."""
-        from tui.shown import View, in_effect
+        from tui.shown import View
 
         machine, actuator = place.machine - 1, max(place.actuator, 1) - 1
         self._view = View(answer=answer, machine=machine, actuator=actuator, system=system, pin=pin)
         self._glyphs = glyphs
         self._fill()
-        self.query_one(Sheet).hint(in_effect(self._view))
         self.query_one(Verdict).show(self._view, glyphs == "ascii")
+        self.call_later(self._hint, self._view)
+
+    def _hint(self, view: View) -> None:
+        """Show the values that hold where fields are left out; not together with all else, to be quick."""
+        from tui.shown import in_effect
+
+        if view is self._view:
+            self.query_one(Sheet).hint(in_effect(view))
 
     def _fill(self) -> None:
         if self._view is not None:

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from textwrap import wrap
 from typing import TYPE_CHECKING, ClassVar
 
+from rich.cells import cell_len, set_cell_size
 from rich.segment import Segment
 from textual import events
 from textual.binding import Binding, BindingType
@@ -127,7 +128,11 @@ class Field(Input):
             (self.has_focus, self.mouse_hover, self.problem, self.label_width, self.outer_size, self.spec),
         )
         if state != self._state:
-            text = super().render_lines(Region(0, 0, self.outer_size.width, 1))[0]
+            width, left = self.outer_size.width, self.label_width + 2
+            if self.has_focus:
+                text = super().render_lines(Region(0, 0, width, 1))[0].crop(left, width - 2)
+            else:
+                text = self._at_rest(max(width - left - 2, 0))
             self._state, self._rows = state, self._drawn(text)
         blank = crop.bottom - len(self._rows)
         rows = self._rows + [Strip.blank(self.outer_size.width, self.rich_style)] * blank if blank > 0 else self._rows
@@ -135,9 +140,17 @@ class Field(Input):
         rows = rows[crop.y : crop.bottom]
         return rows if whole else [row.crop(crop.x, crop.right) for row in rows]
 
+    def _at_rest(self, room: int) -> Strip:
+        """The text from its start, without a cursor; that it goes on is said by a sign."""
+        style = self.rich_style if self.value else self.get_component_rich_style("input--placeholder")
+        text = self.value or self.placeholder
+        if cell_len(text) > room > 0:
+            text = set_cell_size(text, room - 1) + "…"
+        return Strip([Segment(text, style)]).adjust_cell_length(room, self.rich_style)
+
     def _drawn(self, text: Strip) -> list[Strip]:
         """All rows, whole."""
-        width, left = self.outer_size.width, self.label_width + 2
+        width = self.outer_size.width
         plain = self.get_component_rich_style("field--label")
         bad = self.get_component_rich_style("field--problem")
         sign = "!" if self.problem else "›" if self.has_focus else " "
@@ -146,7 +159,7 @@ class Field(Input):
             label = label[: self.label_width - 1] + "…"
         head = [Segment(sign, bad if self.problem else plain), Segment(label.ljust(self.label_width) + " ", plain)]
         tail = [Segment(" ▾" if self.spec.choices else "  ", plain)]
-        rows = [Strip.join([Strip(head), text.crop(left, width - 2), Strip(tail)])]
+        rows = [Strip.join([Strip(head), text, Strip(tail)])]
         for number, line in enumerate(self._told()):
             start = "  └ " if number == 0 else "    "
             rows.append(Strip([Segment((start + line)[:width].ljust(width), bad)]))

@@ -95,8 +95,9 @@ class Sheet(VerticalScroll, can_focus=False):
         if place != self._place:
             self._place = place
             self._readdress()
-        for field in self.fields():
-            field.put(session.text(field.spec.path))
+        else:
+            for field in self.fields():
+                field.put(session.text(field.spec.path))
         self._alternates()
 
     def _readdress(self) -> None:
