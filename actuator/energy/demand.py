@@ -29,22 +29,51 @@ class FlowDemand:
     """Length of the window. [s]"""
 
 
-def _cumulative(time: Array, flow: Array) -> Array:
-    """Integral from the first time to each other, exact for straight pieces."""
-    steps = 0.5 * (flow[1:] + flow[:-1]) * np.diff(time)
-    return np.concatenate(([0.0], np.cumsum(steps)))
+@dataclass(frozen=True, slots=True, eq=False)
+class _Pieces:
+    """A flow of straight pieces between knots, and its integral."""
+
+    knots: Array
+    """Rising; a jump may stand as two equal ones. Shape (n + 1,). [s]"""
+    first: Array
+    """Flow at the beginning of each piece. Shape (n,). [kg/s]"""
+    rise: Array
+    """Slope of each piece, zero where it has no length. Shape (n,). [kg/s**2]"""
+    total: Array
+    """Integral from the first knot to each. Shape (n + 1,). [kg]"""
 
 
-def _drawn(at: Array, time: Array, flow: Array, total: Array, period: float) -> Array:
-    """Integral from 0 to ``at`` of the periodic flow, exact for straight pieces."""
+def _slopes(knots: Array, first: Array, last: Array) -> Array:
+    width = np.diff(knots)
+    return np.divide(last - first, width, out=np.zeros_like(width), where=width > 0.0)
+
+
+def _sum(histories: Sequence[tuple[Array, Array]]) -> _Pieces:
+    """Sum of flows, with the knots of all of them."""
+    if len(histories) == 1:
+        knots, flow = histories[0]
+        first, last = flow[:-1], flow[1:]
+    else:
+        knots = np.unique(np.concatenate([time for time, _ in histories]))
+        first, last = np.zeros(len(knots) - 1), np.zeros(len(knots) - 1)
+        for time, flow in histories:
+            place = np.clip(np.searchsorted(time, knots[:-1], side="right") - 1, 0, len(time) - 2)
+            begun, rise, flow_then = time[place], _slopes(time, flow[:-1], flow[1:])[place], flow[place]
+            first += flow_then + rise * (knots[:-1] - begun)
+            last += flow_then + rise * (knots[1:] - begun)
+    total = np.concatenate(([0.0], np.cumsum(0.5 * (first + last) * np.diff(knots))))
+    return _Pieces(knots, first, _slopes(knots, first, last), total)
+
+
+def _drawn(at: Array, flow: _Pieces, period: float) -> Array:
+    """Integral from 0 to ``at`` of the periodic flow, exact."""
     turns = np.floor(at / period)
     local = at - turns * period
-    piece = np.clip(np.searchsorted(time, local, side="right") - 1, 0, len(time) - 2)
-    width = time[piece + 1] - time[piece]
-    gone = local - time[piece]
-    share = np.divide(gone, width, out=np.zeros_like(gone), where=width > 0.0)
-    now = flow[piece] + (flow[piece + 1] - flow[piece]) * share
-    result: Array = turns * total[-1] + total[piece] + 0.5 * (flow[piece] + now) * gone
+    place = np.clip(np.searchsorted(flow.knots, local, side="right") - 1, 0, len(flow.first) - 1)
+    gone = local - flow.knots[place]
+    result: Array = (flow.first[place] + 0.5 * flow.rise[place] * gone) * gone
+    result += flow.total[place]
+    result += turns * flow.total[-1]
     return result
 
 
@@ -73,18 +102,14 @@ def demand(histories: Sequence[tuple[Array, Array]], period: float, window: floa
     """
     if not histories:
         return FlowDemand(mean=0.0, peak=0.0, per_cycle=0.0, window=window)
-    totals = [_cumulative(time, flow) for time, flow in histories]
-    per_cycle = float(sum(total[-1] for total in totals))
+    flow = _sum(histories)
+    per_cycle = float(flow.total[-1])
     if window <= 0.0:
         return FlowDemand(mean=per_cycle / period, peak=_highest(histories), per_cycle=per_cycle, window=0.0)
-    edges = np.concatenate([time for time, _ in histories])
-    starts = np.unique(np.concatenate((edges, np.mod(edges - window, period), [0.0, period])))
+    starts = np.unique(np.concatenate((flow.knots, np.mod(flow.knots - window, period), [0.0, period])))
     middles = 0.5 * (starts[1:] + starts[:-1])
-    at = np.concatenate((starts, middles))
-    mean = np.zeros_like(at)
-    for (time, flow), total in zip(histories, totals, strict=True):
-        mean += _drawn(at + window, time, flow, total, period) - _drawn(at, time, flow, total, period)
-    left, right, middle = mean[: len(starts) - 1], mean[1 : len(starts)], mean[len(starts) :]
+    mean, middle = (_drawn(at + window, flow, period) - _drawn(at, flow, period) for at in (starts, middles))
+    left, right = mean[:-1], mean[1:]
     bend = left - 2.0 * middle + right  # parabola through three points, its vertex where it bends down
     rise = 0.5 * (right - left)
     inside = (bend < 0.0) & (np.abs(rise) < -bend)
