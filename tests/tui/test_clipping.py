@@ -55,6 +55,10 @@ async def test_both_workspaces_are_whole_with_and_without_problems(size: tuple[i
             await pilot.press(key)
             await pilot.pause()
             whole(app, size)
+        await pilot.press("f9")
+        await pilot.pause()
+        assert app.desk.query_one("#view").size.width >= size[0] - 2
+        await pilot.press("f9")
         await scrolled(app, pilot)
         for path, text in ((BORE, "0 mm"), (BORE.replace("bore", "rod"), "wide"), ("site.ambient_pressure", "1 bar")):
             app.session = app.session.edited(path, text)

@@ -19,7 +19,6 @@ from tui.widgets.figures import Figures
 from tui.widgets.page import Page
 from tui.widgets.plot import Plot
 from tui.widgets.problems import Problems
-from tui.widgets.sheet import Sheet
 
 
 def shows(app: Design, *texts: str) -> bool:
@@ -166,6 +165,12 @@ async def test_the_workspace_stroke_shows_plots_loops_ledger_and_half_strokes() 
         titles = ["Position", "Speed", "Pressures", "p-V, cap side", "p-V, rod side"]
         assert shows(app, *titles, "◇ ideal", "● simulated", "Exergy of a cycle", "Stroke time")
         assert shows(app, "[mm]", "[m/s]", "[bar gauge]", "cm3", "% ")
+        app.action_do("view.glyphs")
+        await pilot.pause()
+        assert not any(0x2800 < ord(char) < 0x2900 for line in seen(app) for char in line)
+        app.action_do("view.glyphs")
+        await pilot.pause()
+        assert shows(app, "I ideal", "C simulated")
         await pilot.press("f2")
         await pilot.pause()
         assert shows(app, "Theoretical force")
@@ -413,33 +418,6 @@ async def test_a_pin_shows_differences_and_can_be_taken_away() -> None:
         assert not shows(app, "from the pin")
 
 
-async def test_the_sheet_makes_way_and_comes_back() -> None:
-    app = Quick(one())
-    async with app.run_test(size=(80, 24)) as pilot:
-        await settled(app, pilot)
-        await pilot.press("f3", "f9")
-        await pilot.pause()
-        assert not app.desk.query_one(Sheet).display
-        assert app.desk.query_one("#view").size.width >= 78
-        await pilot.press("f9")
-        assert app.desk.query_one(Sheet).display
-
-
-async def test_glyphs_turn_to_blocks_and_ascii() -> None:
-    app = Quick(one())
-    async with app.run_test(size=(160, 50)) as pilot:
-        await settled(app, pilot)
-        await pilot.press("f3")
-        app.action_do("view.glyphs")
-        await pilot.pause()
-        assert not any(0x2800 < ord(char) < 0x2900 for line in seen(app) for char in line)
-        app.action_do("view.glyphs")
-        await pilot.pause()
-        plots = "\n".join(seen(app))
-        assert "I ideal" in plots
-        assert "C simulated" in plots
-
-
 async def test_other_ways_to_state_a_conductance_appear_when_they_are_needed() -> None:
     app = Quick(one())
     valve = "machine.1.actuator.1.valve."
@@ -466,7 +444,7 @@ async def test_a_field_left_out_shows_the_value_that_holds() -> None:
         assert app.session.text(BORE.replace("bore", "closed_length")) == ""
 
 
-async def test_a_key_in_a_window_is_no_edit() -> None:
+async def test_windows_keep_their_keys_to_themselves_and_quitting_twice_asks_once() -> None:
     app = Quick(one())
     async with app.run_test(size=(100, 30)) as pilot:
         await settled(app, pilot)
@@ -478,12 +456,6 @@ async def test_a_key_in_a_window_is_no_edit() -> None:
         assert app.session.revision == 0
         await pilot.press("escape")
         assert at_desk(app)
-
-
-async def test_quitting_twice_asks_once() -> None:
-    app = Quick(one())
-    async with app.run_test(size=(100, 30)) as pilot:
-        await settled(app, pilot)
         await pilot.press("1", "ctrl+q", "ctrl+q")
         await pilot.pause()
         assert isinstance(app.screen, Ask)
