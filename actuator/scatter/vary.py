@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, replace
+from functools import cache
 from typing import Any
 
 from actuator.errors import Refusal
@@ -63,18 +64,28 @@ def _load(load: Load, by: Deviation) -> Load:
     )
 
 
+@cache
+def _flowing(part: Any) -> tuple[tuple[str, bool], ...]:
+    """Fields of a part that are a conductance, or a part that may hold some: name, and whether it is a part."""
+    return tuple(
+        (spec.name, spec.part is not None)
+        for spec in fields_of(part)
+        if spec.name not in _KEPT
+        and not spec.is_list
+        and (
+            (spec.part is not None and _flowing(spec.part) != ())
+            or (spec.kind is not None and spec.kind.dimension == "conductance")
+        )
+    )
+
+
 def _conductances(part: Any, factor: float) -> Any:
     """Copy of a part with each conductance in it and in the parts inside it multiplied."""
     changed: dict[str, Any] = {}
-    for spec in fields_of(part.__class__):
-        if spec.name in _KEPT or (spec.part is None and (spec.kind is None or spec.kind.dimension != "conductance")):
-            continue
-        value = getattr(part, spec.name)
-        if value is None or spec.is_list:
-            continue
-        made = value * factor if spec.part is None else _conductances(value, factor)
-        if made is not value:
-            changed[spec.name] = made
+    for name, inside in _flowing(part.__class__):
+        value = getattr(part, name)
+        if value is not None:
+            changed[name] = _conductances(value, factor) if inside else value * factor
     return replace(part, **changed) if changed else part
 
 
@@ -140,7 +151,16 @@ def paths_times(paths: tuple[Path, ...], factor: float) -> tuple[Path, ...]:
     -------
     tuple of Path
     """
-    return tuple(replace(path, conductance=path.conductance * factor) for path in paths)
+    return tuple(
+        Path(
+            name=path.name,
+            conductance=path.conductance * factor,
+            critical_ratio=path.critical_ratio,
+            subsonic_index=path.subsonic_index,
+            error=path.error,
+        )
+        for path in paths
+    )
 
 
 def scaled_paths(actuator: Actuator, machine: Machine, site: Site) -> tuple[Path, ...] | None:

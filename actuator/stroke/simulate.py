@@ -129,9 +129,10 @@ def simulate(
         return Refusal(
             "the motion changes too fast to be followed: look for a dead volume, mass or conductance out of proportion"
         )
+    recorded = int(info[at.I_ROWS]) * at.HISTORY_WIDTH  # the rest of the room for it is best left untouched
     return assemble(
         actuator, machine, site,
-        par=np.array(par), rows=np.array(history), log=np.array(rows.events), info=np.array(info),
+        par=np.array(par), rows=np.array(history[:recorded]), log=np.array(rows.events), info=np.array(info),
         start=np.array(rows.before[0]), end=np.array(rows.y[0]), cycles=cycles, fine=fine, ledger=ledger,
         compiled=compiled,
     )  # fmt: skip
