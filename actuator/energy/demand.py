@@ -37,6 +37,8 @@ class _Pieces:
     """Rising; a jump may stand as two equal ones. Shape (n + 1,). [s]"""
     first: Array
     """Flow at the beginning of each piece. Shape (n,). [kg/s]"""
+    last: Array
+    """Flow at the end of each piece. Shape (n,). [kg/s]"""
     rise: Array
     """Slope of each piece, zero where it has no length. Shape (n,). [kg/s**2]"""
     total: Array
@@ -57,12 +59,13 @@ def _sum(histories: Sequence[tuple[Array, Array]]) -> _Pieces:
         knots = np.unique(np.concatenate([time for time, _ in histories]))
         first, last = np.zeros(len(knots) - 1), np.zeros(len(knots) - 1)
         for time, flow in histories:
-            place = np.clip(np.searchsorted(time, knots[:-1], side="right") - 1, 0, len(time) - 2)
-            begun, rise, flow_then = time[place], _slopes(time, flow[:-1], flow[1:])[place], flow[place]
-            first += flow_then + rise * (knots[:-1] - begun)
-            last += flow_then + rise * (knots[1:] - begun)
+            pieces = np.diff(np.searchsorted(knots, time))  # how many of the sum's pieces each own piece makes
+            rise = _slopes(time, flow[:-1], flow[1:])
+            own, slope, begun = (np.repeat(item, pieces) for item in (flow[:-1], rise, time[:-1]))
+            first += own + slope * (knots[:-1] - begun)
+            last += own + slope * (knots[1:] - begun)
     total = np.concatenate(([0.0], np.cumsum(0.5 * (first + last) * np.diff(knots))))
-    return _Pieces(knots, first, _slopes(knots, first, last), total)
+    return _Pieces(knots, first, last, _slopes(knots, first, last), total)
 
 
 def _drawn(at: Array, flow: _Pieces, period: float) -> Array:
@@ -107,14 +110,18 @@ def demand(histories: Sequence[tuple[Array, Array]], period: float, window: floa
     if window <= 0.0:
         return FlowDemand(mean=per_cycle / period, peak=_highest(histories), per_cycle=per_cycle, window=0.0)
     starts = np.unique(np.concatenate((flow.knots, np.mod(flow.knots - window, period), [0.0, period])))
-    middles = 0.5 * (starts[1:] + starts[:-1])
-    mean, middle = (_drawn(at + window, flow, period) - _drawn(at, flow, period) for at in (starts, middles))
-    left, right = mean[:-1], mean[1:]
+    mean = _drawn(starts + window, flow, period) - _drawn(starts, flow, period)
+    left, right, highest = mean[:-1], mean[1:], float(mean.max())
+    # between two starts the mean cannot rise by more than this, so few parabolas can be higher than all ends
+    rise = 0.5 * np.diff(starts) * float(np.ptp(np.concatenate((flow.first, flow.last))))
+    near = np.flatnonzero(np.maximum(left, right) + rise > highest)
+    left, right, middles = left[near], right[near], 0.5 * (starts[near] + starts[near + 1])
+    middle = _drawn(middles + window, flow, period) - _drawn(middles, flow, period)
     bend = left - 2.0 * middle + right  # parabola through three points, its vertex where it bends down
-    rise = 0.5 * (right - left)
-    inside = (bend < 0.0) & (np.abs(rise) < -bend)
-    vertex = middle - np.divide(rise * rise, 2.0 * bend, out=np.zeros_like(bend), where=inside)
-    peak = max(float(mean.max()), float(vertex.max())) / window
+    half = 0.5 * (right - left)
+    inside = (bend < 0.0) & (np.abs(half) < -bend)
+    vertex = middle - np.divide(half * half, 2.0 * bend, out=np.zeros_like(bend), where=inside)
+    peak = max(highest, float(vertex.max(initial=highest))) / window
     return FlowDemand(mean=per_cycle / period, peak=peak, per_cycle=per_cycle, window=window)
 
 

@@ -60,9 +60,7 @@ def passage(p_up: float, p_down: float, temp_up: float, c: float, b: float, m: f
     return c * p_up * RHO_ISO6358 * linear * math.sqrt(TEMP_ANR / temp_up * bracket)
 
 
-def passage_slope(
-    flow: float, p_up: float, p_down: float, temp_up: float, c: float, b: float, m: float
-) -> float:
+def passage_slope(flow: float, p_up: float, p_down: float, temp_up: float, c: float, b: float, m: float) -> float:
     """Derivative of :func:`passage` by the downstream pressure, never above zero. [kg/(s·Pa)]
 
     ``flow`` is what :func:`passage` gives for the other parameters, ``p_down`` ≤ ``p_up``. The flow is of degree one

@@ -49,17 +49,18 @@ PATIENCE = 6
 """Strokes that a process computes interpreted before it begins to load the compiled kernel: loading costs more. [1]"""
 PATIENT_FOR = 180.0
 """Time after which a process that began to compile is taken for dead. [s]"""
-_OFF = "ACTUATOR_INTERPRETED"
-"""Environment variable: set to anything, the kernel is never compiled."""
+OFF = "ACTUATOR_INTERPRETED"
+"""Environment variable: set to anything, the kernel runs interpreted and is never compiled."""
 
-Settle = Callable[..., float]
+Kernel = Callable[..., float]
+"""The entry, interpreted or compiled."""
 
 
 @dataclass(slots=True)
 class _State:
     """What this process knows of the compiled kernel; changed under the lock only."""
 
-    settle: Settle | None = None
+    kernel: Kernel | None = None
     child: subprocess.Popen[bytes] | None = None
     loader: threading.Thread | None = None
     remark: str = ""
@@ -143,7 +144,7 @@ def _options(function: types.FunctionType, cached: bool) -> dict[str, Any]:
     }
 
 
-def bind() -> Settle:
+def bind() -> Kernel:
     """Jitted twin of ``batch.batch``, from the cache where it is warm; compiles where it is not.
 
     Returns
@@ -185,20 +186,20 @@ def bind() -> Settle:
     entry.disable_compile()
     if folder is not None:
         _ready_mark(folder).touch()
-    compiled: Settle = entry
+    compiled: Kernel = entry
     return compiled
 
 
 def _load() -> None:
     """Bind in this process and publish the result; runs in a thread."""
     try:
-        settle = bind()
+        kernel = bind()
     except Exception as fault:  # numba may fail in many ways; the interpreted kernel answers all the same
         with _lock:
             _state.remark = f"not compiled ({type(fault).__name__}: {fault}); computed interpreted"
         return
     with _lock:
-        _state.settle = settle
+        _state.kernel = kernel
 
 
 def _compile_in_child() -> subprocess.Popen[bytes] | None:
@@ -220,10 +221,10 @@ def prepare(wait: bool = False) -> None:
 
     A warm cache is loaded in a thread; a cold one is first filled by a child process. Call again to move on.
     """
-    if os.environ.get(_OFF):
+    if os.environ.get(OFF):
         return
     with _lock:
-        if _state.settle is not None or _state.remark:
+        if _state.kernel is not None or _state.remark:
             return
         if _state.loader is None:
             if importlib.util.find_spec("numba") is None:
@@ -262,8 +263,8 @@ def expect(strokes: int) -> None:
     prepare(wait=folder is not None and _ready_mark(folder).exists())
 
 
-def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
-    """Pick the ``settle`` to call, and tell whether it is the compiled one.
+def engine(wanted: Engine = "auto") -> tuple[Kernel, bool]:
+    """Pick the kernel to call, and tell whether it is the compiled one.
 
     Parameters
     ----------
@@ -281,7 +282,7 @@ def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
     RuntimeError
         If ``"compiled"`` is wanted and cannot be had.
     """
-    if wanted == "interpreted":
+    if wanted == "interpreted" or (wanted == "auto" and os.environ.get(OFF)):
         return batch.batch, False
     with _lock:
         _state.asked += 1
@@ -289,11 +290,17 @@ def engine(wanted: Engine = "auto") -> tuple[Settle, bool]:
     if wanted == "compiled" or not patient:
         prepare(wait=wanted == "compiled")
     with _lock:
-        if _state.settle is not None:
-            return _state.settle, True
+        if _state.kernel is not None:
+            return _state.kernel, True
         if wanted == "compiled":
             raise RuntimeError(_state.remark or "the compiled kernel is switched off")
     return batch.batch, False
+
+
+def loaded() -> bool:
+    """Whether strokes run compiled, and so side by side: the compiled kernel holds no lock."""
+    with _lock:
+        return _state.kernel is not None and not os.environ.get(OFF)
 
 
 def remark() -> str:

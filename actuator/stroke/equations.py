@@ -104,9 +104,9 @@ def chamber(
         Place of the chamber's connection in ``mode``.
     """
     # a stage that is tried may lie beyond an end or below zero: kept positive, the step error then rejects it
-    m = max(m, 1e-12)
-    u = max(u, 1e-7)
-    volume = max(volume, 0.1 * dead)
+    m = m if m > 1e-12 else 1e-12
+    u = u if u > 1e-7 else 1e-7
+    volume = volume if volume > 0.1 * dead else 0.1 * dead
     p = _GAMMA_1 * u / volume
     temp = u / (m * CV)
     port = mode[link + at.PORT_P]
@@ -129,25 +129,23 @@ def vented(growth: float, par: Row) -> Chamber:
     return Chamber(par[at.P_AMB], par[at.T_AMB], 0.0, 0.0, par[at.P_AMB] * growth, 0.0)
 
 
-def cap_chamber(time: float, y: State, mode: Row, par: Row) -> Chamber:
-    """:func:`chamber` of the cap side."""
+def cap_chamber(part: float, y: State, mode: Row, par: Row) -> Chamber:
+    """:func:`chamber` of the cap side, with the valve open by ``part``."""
     x, area, dead = y[at.X], par[at.AREA_CAP], par[at.DEAD_CAP]
     if par[at.VENTED_CAP] > 0.5:
         return vented(area * y[at.V], par)
     wall = math.pi * par[at.BORE] * x + 2.0 * area
-    part = opening(time, mode)
     return chamber(
         y[at.M_CAP], y[at.U_CAP], dead, dead + area * x, area * y[at.V], wall, part, at.CAP_LINK, mode, par
     )  # fmt: skip
 
 
-def rod_chamber(time: float, y: State, mode: Row, par: Row) -> Chamber:
-    """:func:`chamber` of the rod side."""
+def rod_chamber(part: float, y: State, mode: Row, par: Row) -> Chamber:
+    """:func:`chamber` of the rod side, with the valve open by ``part``."""
     x, area, dead = par[at.STROKE] - y[at.X], par[at.AREA_ROD], par[at.DEAD_ROD]
     if par[at.VENTED_ROD] > 0.5:
         return vented(-area * y[at.V], par)
     wall = math.pi * par[at.BORE] * x + 2.0 * area
-    part = opening(time, mode)
     return chamber(
         y[at.M_ROD], y[at.U_ROD], dead, dead + area * x, -area * y[at.V], wall, part, at.ROD_LINK, mode, par
     )  # fmt: skip
@@ -185,8 +183,9 @@ def rates(time: float, y: State, mode: Row, par: Row) -> State:
     Each chamber: dm/dt = q_in - q_out and :func:`stored_rate`. Piston: M·dv/dt = D - opposing forces - friction;
     at rest (DIRECTION 0, v 0) x and v do not move.
     """
-    cap = cap_chamber(time, y, mode, par)
-    rod = rod_chamber(time, y, mode, par)
+    part = opening(time, mode)
+    cap = cap_chamber(part, y, mode, par)
+    rod = rod_chamber(part, y, mode, par)
     direction = mode[at.DIRECTION]
     acceleration = 0.0
     if direction != 0.0:

@@ -10,7 +10,7 @@ import math
 from actuator.air.gas import CP, R_AIR
 from actuator.stroke import dopri, rodas
 from actuator.stroke import layout as at
-from actuator.stroke.equations import Chamber, cap_chamber, opposing, rod_chamber, rubbing
+from actuator.stroke.equations import Chamber, cap_chamber, opening, opposing, rod_chamber, rubbing
 from actuator.stroke.slopes import cap_tangent, chamber_change, rod_tangent
 from actuator.stroke.states import NOTHING, Row, State, Table, scaled, shifted, sizes, spread
 from actuator.stroke.steppers import Stages, Step
@@ -106,8 +106,9 @@ def transfers(cap: Chamber, rod: Chamber, carried1: float, carried2: float, mode
 
 def integrands(time: float, y: State, mode: Row, par: Row, out: Row) -> None:
     """All integrands at one state."""
-    cap = cap_chamber(time, y, mode, par)
-    rod = rod_chamber(time, y, mode, par)
+    part = opening(time, mode)
+    cap = cap_chamber(part, y, mode, par)
+    rod = rod_chamber(part, y, mode, par)
     losses(cap, rod, y[at.V], mode, par, out)
     transfers(cap, rod, cap.outflow * cap.temp, rod.outflow * rod.temp, mode, out)
 
@@ -116,7 +117,7 @@ def losses_change(time: float, y: State, dt: float, dy: State, mode: Row, par: R
     """Derivative of the losses in direction (dt, dy) to ``out``, a difference quotient; ``here`` holds those at y."""
     part = _NUDGE / max(math.sqrt(spread(dy, NOTHING, sizes(y, y, par))), _NUDGE)
     aside = shifted(y, part, dy)
-    later = time + part * dt
+    later = opening(time + part * dt, mode)
     losses(cap_chamber(later, aside, mode, par), rod_chamber(later, aside, mode, par), aside[at.V], mode, par, out)
     for i in range(at.N_LOSS):
         out[i] = (out[i] - here[i]) / part
