@@ -8,9 +8,9 @@ import numpy as np
 
 from actuator.air.gas import CP, CV, GAMMA, R_AIR
 from actuator.errors import Refusal
-from actuator.parts import Actuator, Machine, Site
+from actuator.parts import Actuator, Machine
 from actuator.stroke import layout as at
-from actuator.stroke.histories import Histories, fill_in, half_stroke
+from actuator.stroke.histories import Histories, fill_in, half_stroke, push_on
 from actuator.stroke.result import Array, Balances, Ledger, StrokeResult
 
 
@@ -105,16 +105,14 @@ def make_balances(start: Array, end: Array, par: Array) -> Balances:
 
 def _pauses(events: Array, sign: float, stroke: float) -> str:
     """Positions between the ends where motion in a direction stopped, in millimetres, at most three."""
-    inside = (events[:, at.E_X] > 1e-3 * stroke) & (events[:, at.E_X] < (1.0 - 1e-3) * stroke)
-    held = inside & (events[:, at.E_CODE] == at.STICK) & (events[:, at.E_SIGN] == sign)
-    places = [f"{1e3 * x:.4g}" for x in events[held, at.E_X]]
+    held = (row[at.E_X] for row in events.tolist() if row[at.E_CODE] == at.STICK and row[at.E_SIGN] == sign)
+    places = [f"{1e3 * x:.4g}" for x in held if 1e-3 * stroke < x < (1.0 - 1e-3) * stroke]
     return ", ".join(places[:3]) + (" ..." if len(places) > 3 else "")
 
 
 def assemble(
     actuator: Actuator,
     machine: Machine,
-    site: Site,
     *,
     par: Array,
     rows: Array,
@@ -132,7 +130,8 @@ def assemble(
     past = fill_in(rows[: count * at.HISTORY_WIDTH].reshape(count, at.HISTORY_WIDTH), par)
     happened = min(int(info[at.I_EVENTS]), at.MAX_EVENTS)
     events = log[: happened * at.EVENT_WIDTH].reshape(happened, at.EVENT_WIDTH)
-    halves = [half_stroke(sign, actuator, machine, site.ambient_pressure, events, par, past) for sign in (1.0, -1.0)]
+    push = push_on(past, par)
+    halves = [half_stroke(sign, actuator, machine, events, par, past, push) for sign in (1.0, -1.0)]
     mismatch = float(info[at.I_MISMATCH])
     periodic = mismatch <= 10.0 * fine
     remarks = []

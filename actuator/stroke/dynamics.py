@@ -12,6 +12,7 @@ from actuator.air.gas import GAMMA
 from actuator.errors import Refusal
 from actuator.parts import Actuator, Machine
 from actuator.stroke import layout as at
+from actuator.stroke.histories import push_on, since
 from actuator.stroke.result import Array, StrokeResult
 
 
@@ -102,16 +103,7 @@ def push_of(stroke: StrokeResult, par: Array) -> Array:
     ndarray
         Shape of the cycle's time axis, read-only. [N]
     """
-    area1, area2 = par[at.AREA_CAP], par[at.AREA_ROD]
-    push: Array = (
-        stroke.p_cap * area1
-        - stroke.p_rod * area2
-        - par[at.P_AMB] * (area1 - area2)
-        - par[at.WEIGHT]
-        + par[at.CONSTANT]
-        + par[at.SPRING_FORCE]
-        + par[at.SPRING_RATE] * stroke.position
-    )
+    push = push_on(stroke, par)
     push.setflags(write=False)
     return push
 
@@ -142,10 +134,10 @@ def _half(
     if sign < 0.0:
         command, counter = counter, command
     period, delay = machine.cycle_time, actuator.valve.delay
-    since = (stroke.time - command - delay) % period
-    order = np.argsort(since, kind="stable")
-    order = order[since[order] <= (counter - command) % period]
-    clock = since[order] + delay
+    passed = since(stroke.time, (command + delay) % period, period)
+    order = np.flatnonzero(passed <= (counter - command) % period)
+    order = order[np.argsort(passed[order], kind="stable")]
+    clock = passed[order] + delay
     speed, step = sign * stroke.speed, np.diff(stroke.time)
     moving = speed > 0.0
     still = Refusal("the piston does not move this way", f"{direction}.peak_speed")

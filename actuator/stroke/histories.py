@@ -10,7 +10,7 @@ from actuator.air.gas import CV, GAMMA
 from actuator.errors import Refusal
 from actuator.parts import Actuator, Machine
 from actuator.stroke import layout as at
-from actuator.stroke.result import Array, HalfStroke
+from actuator.stroke.result import Array, HalfStroke, StrokeResult
 
 _BETWEEN = np.array([0.25, 0.5, 0.75])
 """Fractions of a step at which the history is filled in by its cubic."""
@@ -112,26 +112,69 @@ def fill_in(rows: Array, par: Array) -> Histories:
     return Histories(**found)
 
 
-def _arrival(log: Array, sign: float) -> int | None:
-    """Index of the first arrival at that end in the log."""
-    hits = np.flatnonzero((log[:, at.E_CODE] == at.ARRIVE) & (log[:, at.E_SIGN] == sign))
-    return int(hits[0]) if len(hits) else None
+Event = list[float]
+"""One row of the kernel's log; there are few, so that lists are quicker than arrays."""
 
 
-def _start_of(log: Array, arrival: int, sign: float, since: float) -> tuple[float, float]:
+def _from_command(log: Array, sign: float, opens: float, period: float, delay: float) -> list[Event]:
+    """The log from a way's switching on, times counted from its command."""
+    rows: list[Event] = log.tolist()
+    for row in rows:
+        row[at.E_TIME] = (row[at.E_TIME] - opens + 1e-12 * period) % period + delay - 1e-12 * period
+    first = next(i for i, row in enumerate(rows) if row[at.E_CODE] == at.SWITCH and row[at.E_SIGN] == sign)
+    return rows[first:] + rows[:first]
+
+
+def _is_arrival(row: Event, sign: float) -> bool:
+    return row[at.E_CODE] == at.ARRIVE and row[at.E_SIGN] == sign
+
+
+def _start_of(log: list[Event], arrival: int, sign: float, since: float) -> tuple[float, float]:
     """Time and place of the start of the motion that ends at ``arrival``; a stick within 1 ms is no end of it."""
-    start, place = since, float(log[0, at.E_X])
-    for i in range(arrival - 1, -1, -1):
-        code = log[i, at.E_CODE]
-        if code == at.START and log[i, at.E_SIGN] == sign:
-            start, place = log[i, at.E_TIME], log[i, at.E_X]
-        elif (code == at.STICK and start - log[i, at.E_TIME] > 1e-3) or code in (at.START, at.ARRIVE):
+    start, place = since, log[0][at.E_X]
+    for row in reversed(log[:arrival]):
+        code = row[at.E_CODE]
+        if code == at.START and row[at.E_SIGN] == sign:
+            start, place = row[at.E_TIME], row[at.E_X]
+        elif (code == at.STICK and start - row[at.E_TIME] > 1e-3) or code in (at.START, at.ARRIVE):
             break
-    return float(start), float(place)
+    return start, place
+
+
+def since(time: Array, instant: float, period: float) -> Array:
+    """Time since an instant of the cycle, from 0 to the period, at each point of the time axis.
+
+    Parameters
+    ----------
+    time : ndarray
+        From 0 to the period. [s]
+    instant, period : float
+        ``instant`` within the period. [s]
+
+    Returns
+    -------
+    ndarray
+        [s]
+    """
+    passed: Array = time - instant
+    passed[passed < 0.0] += period
+    return passed
+
+
+def push_on(past: Histories | StrokeResult, par: Array) -> Array:
+    """Force on the piston over a cycle, without friction and opposing forces, positive extending. [N]"""
+    push: Array = past.p_cap * par[at.AREA_CAP]
+    push -= past.p_rod * par[at.AREA_ROD]
+    push += (
+        par[at.CONSTANT] + par[at.SPRING_FORCE] - par[at.WEIGHT] - par[at.P_AMB] * (par[at.AREA_CAP] - par[at.AREA_ROD])
+    )
+    if par[at.SPRING_RATE] != 0.0:
+        push += par[at.SPRING_RATE] * past.position
+    return push
 
 
 def half_stroke(
-    sign: float, actuator: Actuator, machine: Machine, ambient: float, log: Array, par: Array, past: Histories
+    sign: float, actuator: Actuator, machine: Machine, log: Array, par: Array, past: Histories, push: Array
 ) -> HalfStroke:
     """Figures of one way of the piston.
 
@@ -140,14 +183,14 @@ def half_stroke(
     sign : float
         1 extend, -1 retract.
     actuator, machine : part
-    ambient : float
-        Ambient pressure, absolute. [Pa]
     log : ndarray
         Shape (n, EVENT_WIDTH), events of one cycle.
     par : ndarray
         The kernel's parameters.
     past : Histories
         Of the same cycle.
+    push : ndarray
+        Force on the piston as of :func:`push_on`. [N]
     """
     period, delay = machine.cycle_time, actuator.valve.delay
     direction, other = ("extend", "retract") if sign > 0.0 else ("retract", "extend")
@@ -156,26 +199,22 @@ def half_stroke(
     opens = (command + delay) % period
     lasts = (counter - command) % period
 
-    # the log from this way's switching on, times counted from its command
-    log = log.copy()
-    log[:, at.E_TIME] = (log[:, at.E_TIME] - opens + 1e-12 * period) % period + delay - 1e-12 * period
-    first = np.flatnonzero((log[:, at.E_CODE] == at.SWITCH) & (log[:, at.E_SIGN] == sign))[0]
-    log = np.concatenate([log[first:], log[:first]])
+    events = _from_command(log, sign, opens, period, delay)
     own_mass = at.E_M_CAP if sign > 0.0 else at.E_M_ROD
-    back = np.flatnonzero(log[:, at.E_CODE] == at.SWITCH)[1]
-    air_drawn = float(log[back, own_mass] - log[0, own_mass])
+    back = next(row for row in events[1:] if row[at.E_CODE] == at.SWITCH)
+    air_drawn = back[own_mass] - events[0][own_mass]
 
-    since_open = (past.time - opens) % period
+    since_open = since(past.time, opens, period)
     in_half = since_open <= lasts
     speeds = sign * past.speed
     reached = float(past.position.max() if sign > 0.0 else past.position.min())
     peak_flow = float(past.flow_supply[in_half].max(initial=0.0)) if direction in actuator.air_ways else 0.0
 
-    arrival = _arrival(log, sign)
+    arrival = next((i for i, row in enumerate(events) if _is_arrival(row, sign)), None)
     if arrival is None:
         way = reached if sign > 0.0 else actuator.stroke - reached
         end = actuator.stroke if sign > 0.0 else 0.0
-        if abs(log[0, at.E_X] - end) <= 1e-9 * actuator.stroke:
+        if abs(events[0][at.E_X] - end) <= 1e-9 * actuator.stroke:
             reason = f"the piston stands at this end already: it did not {other} before"
         elif way <= 1e-9 * actuator.stroke:
             reason = "the piston does not start"
@@ -201,13 +240,15 @@ def half_stroke(
             peak_flow=peak_flow,
             air_drawn=air_drawn,
         )
-    arrived = float(log[arrival, at.E_TIME])
-    started, place = _start_of(log, arrival, sign, delay)
+    arrived = events[arrival][at.E_TIME]
+    started, place = _start_of(events, arrival, sign, delay)
     end = actuator.stroke if sign > 0.0 else 0.0
-    later = (log[:, at.E_CODE] == at.ARRIVE) & (log[:, at.E_SIGN] == sign) & (log[:, at.E_TIME] <= lasts + delay)
-    settled = float(log[later, at.E_TIME].max(initial=arrived))
-    end_speed = abs(float(log[arrival, at.E_V]))
-    force_time, force = _standing_force(sign, actuator, ambient, par, past, since_open + delay, arrived, lasts + delay)
+    later = (row[at.E_TIME] for row in events if _is_arrival(row, sign) and row[at.E_TIME] <= lasts + delay)
+    settled = max(later, default=arrived)
+    end_speed = abs(events[arrival][at.E_V])
+    wanted = (actuator.require.force_at_end or 0.0) if sign > 0.0 else 0.0
+    standing = sign * push - par[at.COULOMB]
+    force_time, force = _standing_force(direction, standing, since_open + delay, arrived, lasts + delay, wanted)
     return HalfStroke(
         direction=direction,
         completed=True,
@@ -227,35 +268,16 @@ def half_stroke(
 
 
 def _standing_force(
-    sign: float,
-    actuator: Actuator,
-    ambient: float,
-    par: Array,
-    past: Histories,
-    since_command: Array,
-    arrived: float,
-    ends: float,
+    direction: str, force: Array, since_command: Array, arrived: float, ends: float, wanted: float
 ) -> tuple[float | Refusal, float | Refusal]:
     """Time after arrival until the wanted force stands, and the force at the next switching."""
-    field = "extend.force_time" if sign > 0.0 else "retract.force_time"
-    order = np.argsort(since_command, kind="stable")
-    clock = since_command[order]
-    push = (
-        past.p_cap * par[at.AREA_CAP]
-        - past.p_rod * par[at.AREA_ROD]
-        - ambient * (par[at.AREA_CAP] - par[at.AREA_ROD])
-        - par[at.WEIGHT]
-        + par[at.CONSTANT]
-        + par[at.SPRING_FORCE]
-        + par[at.SPRING_RATE] * past.position
-    )[order]
-    force = sign * push - par[at.COULOMB]
-    standing = (clock >= arrived - 1e-12) & (clock <= ends + 1e-12)
-    if not standing.any():
+    field = f"{direction}.force_time"
+    standing = np.flatnonzero((since_command >= arrived - 1e-12) & (since_command <= ends + 1e-12))
+    if not len(standing):
         lost = Refusal("the valve is switched back before the arrival", field)
         return lost, lost
-    clock, force = clock[standing], force[standing]
-    wanted = (actuator.require.force_at_end or 0.0) if sign > 0.0 else 0.0
+    order = standing[np.argsort(since_command[standing], kind="stable")]
+    clock, force = since_command[order], force[order]
     enough = np.flatnonzero(force >= wanted)
     if not len(enough):
         reason = f"{float(force.max()):.4g} N stand at most, {wanted:.4g} N are wanted"

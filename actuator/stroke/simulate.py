@@ -131,7 +131,7 @@ def simulate(
         )
     recorded = int(info[at.I_ROWS]) * at.HISTORY_WIDTH  # the rest of the room for it is best left untouched
     return assemble(
-        actuator, machine, site,
+        actuator, machine,
         par=np.array(par), rows=np.array(history[:recorded]), log=np.array(rows.events), info=np.array(info),
         start=np.array(rows.before[0]), end=np.array(rows.y[0]), cycles=cycles, fine=fine, ledger=ledger,
         compiled=compiled,
