@@ -97,6 +97,7 @@ class Design(App[int], inherit_bindings=False):
         """Put what was typed into the document."""
         field = event.input
         if isinstance(field, Field):
+            field.taken = field.value
             try:
                 self.session = self.session.edited(field.spec.path, field.value)
             except InputError as fault:  # the file has no such table, or is no TOML

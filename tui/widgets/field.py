@@ -20,6 +20,15 @@ if TYPE_CHECKING:
     from actuator.project.schema import SheetField
 
 
+_EDITING = {
+    key: binding.action
+    for binding in Input.BINDINGS
+    if isinstance(binding, Binding) and binding.action.startswith(("cursor_", "delete_", "home", "end"))
+    for key in binding.key.split(",")
+}
+"""Keys that move the cursor or delete, and what they do."""
+
+
 class Field(Input):
     """A field of the sheet. Its text is the document's; it is never corrected or held back."""
 
@@ -62,9 +71,20 @@ class Field(Input):
     def __init__(self, spec: SheetField, text: str) -> None:
         super().__init__(text, select_on_focus=False)
         self.spec = spec
+        self.taken = text
         self._holds = ""
         self._state: tuple[object, ...] | None = None
         self._rows: list[Strip] = []
+
+    async def _on_key(self, event: events.Key) -> None:
+        """Edit at once and in order: a bound key would go round by the app, and what is typed next overtake it."""
+        action = _EDITING.get(event.key)
+        if action is None:
+            await super()._on_key(event)
+            return
+        event.stop()
+        event.prevent_default()
+        await self.run_action(action)
 
     def on_mount(self) -> None:
         """Lay out for the first time."""
@@ -73,13 +93,20 @@ class Field(Input):
     def address(self, spec: SheetField, text: str) -> None:
         """Stand for another path of the same shape, without being built anew."""
         self.spec = spec
+        self.taken = self.value
         self._holds = ""
         self.put(text)
         self._fit()
         self.refresh()
 
     def put(self, text: str) -> None:
-        """Show the document's text without reporting it as typed."""
+        """Show the document's text without reporting it as typed.
+
+        What is typed and not yet taken into the document stays: its report is on the way, and puts it there.
+        """
+        if self.value != self.taken:
+            return
+        self.taken = text
         if self.value != text:
             with self.prevent(Input.Changed):
                 self.value = text
