@@ -16,7 +16,7 @@ from textual.widgets import Input
 
 @pytest.fixture(autouse=True)
 def own_folders(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Path:
-    """State and settings below ``tmp_path``; no blinking cursor."""
+    """State and settings below ``tmp_path``; no blinking cursor, no compiler."""
 
     def below(kind: str) -> Callable[..., str]:
         return lambda *_, **__: str(tmp_path / kind)
@@ -24,4 +24,5 @@ def own_folders(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Path:
     monkeypatch.setattr(platformdirs, "user_state_dir", below("state"))
     monkeypatch.setattr(platformdirs, "user_config_dir", below("config"))
     monkeypatch.setattr(Input, "cursor_blink", False)
+    monkeypatch.setenv("ACTUATOR_INTERPRETED", "1")  # no compiler beside the tests; the screens do not care
     return tmp_path

@@ -18,7 +18,7 @@ KEYS = TYPED * 3 + MOVES * 2 + CHANGES * 2 + VIEWS
 
 
 async def test_fields_show_the_document_whatever_is_pressed() -> None:
-    keys = random.Random(SEED).choices(KEYS, k=300)
+    keys = random.Random(SEED).choices(KEYS, k=220)
     app = Quick(plant())
     async with app.run_test(size=(80, 24)) as pilot:
         await settled(app, pilot)

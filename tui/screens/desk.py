@@ -9,7 +9,9 @@ from textual import events, on
 from textual.app import ComposeResult
 from textual.containers import Horizontal, Vertical
 from textual.message import Message
+from textual.reactive import Reactive
 from textual.screen import Screen
+from textual.widget import Widget
 from textual.widgets import ContentSwitcher, Static
 
 from actuator.errors import Problem
@@ -48,6 +50,9 @@ class Desk(Screen[None]):
         (100, "-middle"),
         (140, "-wide"),
     ]
+
+    focused: Reactive[Widget | None] = Reactive(None, repaint=False)
+    """As Textual has it, but what gets or loses the focus repaints itself, not the whole screen."""
 
     @dataclass
     class Wanted(Message):
