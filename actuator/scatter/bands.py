@@ -15,6 +15,8 @@ from actuator.scatter.vary import Deviation, paths_times, scaled_paths, varied
 
 CHUNK = 8
 """Samples that a thread takes at a time. [1]"""
+FIRST = 32
+"""Samples of the first bands that are handed over; fewer say too little. [1]"""
 TOO_MANY = 0.05
 """Share of samples without a figure above which P5 and P95 of the rest say nothing. [1]"""
 _LEVELS = (0.05, 0.5, 0.95)
@@ -143,7 +145,7 @@ def banded(
     Yields
     ------
     Bands
-        Of the samples so far, at each doubling of their number; at last of all.
+        Of the samples so far, from ``FIRST`` on at each doubling of their number; at last of all.
 
     Raises
     ------
@@ -162,7 +164,7 @@ def banded(
 
     paths = scaled_paths(actuator, machine, site)
     points = deviations(actuator.spread, samples, scrambling)
-    shown = CHUNK
+    shown = FIRST // 2
     for found in side_by_side(
         work, points, threads=threads, chunk=CHUNK, cancelled=cancelled, stop=no_stop() if stop is None else stop
     ):

@@ -143,10 +143,10 @@ def test_partial_results_come_at_each_doubling_and_are_those_of_fewer_samples() 
 
     found = list(banded(BASE.actuator, BASE.machine, BASE.site, evaluate, cancelled=never, threads=1))
     assert [item.samples for item in found][-1] == SAMPLES
-    assert len(found) >= 3
+    assert len(found) >= 2
     for item in found:
         assert item.wanted == SAMPLES
-        assert item.samples in (8, 16, 32, 64, 128)
+        assert item.samples in (32, 64, 128)
         assert item.bands == last(BASE, known, samples=item.samples).bands
 
 
