@@ -98,7 +98,10 @@ def event_of_motion(
         return Found(FAILED, 0.0, 0.0)
     end = par[at.STROKE] if direction > 0.0 else 0.0
     edge = next_edge(y[at.X], mode, par, edges)
+    nearer = min(edge, end) if direction > 0.0 else max(edge, end)
     found = Found(NONE, 0.0, taken)
+    if direction * (end_y[at.X] - nearer) < 0.0 < direction * end_y[at.V]:
+        return found
     for kind in range(3):
         goal = edge if kind == EDGE else end
         after = event_value(kind, end_y, mode, par, goal)

@@ -33,6 +33,8 @@ class Chamber(NamedTuple):
     """Work on the piston, p·dV/dt. [W]"""
     heat: float
     """From the wall to the air. [W]"""
+    gain: float
+    """Rate of internal energy, q_in·cp·T_in - q_out·cp·T - p·dV/dt + Q̇. [W]"""
 
 
 def connect(mode: Row, par: Row) -> None:
@@ -121,12 +123,13 @@ def chamber(
         outflow = part * passage(p, port, temp, mode[place], mode[place + 1], mode[place + 2])
     power = p * growth
     heat = wall_heat(par[at.HEAT], par[at.INDEX], wall, par[at.T_AMB], temp, inflow, port_temp, outflow, power)
-    return Chamber(p, temp, inflow, outflow, power, heat)
+    gain = CP * (inflow * port_temp - outflow * temp) - power + heat
+    return Chamber(p, temp, inflow, outflow, power, heat, gain)
 
 
 def vented(growth: float, par: Row) -> Chamber:
     """A side that is open to the atmosphere, as on the spring of a single-acting cylinder."""
-    return Chamber(par[at.P_AMB], par[at.T_AMB], 0.0, 0.0, par[at.P_AMB] * growth, 0.0)
+    return Chamber(par[at.P_AMB], par[at.T_AMB], 0.0, 0.0, par[at.P_AMB] * growth, 0.0, 0.0)
 
 
 def cap_chamber(part: float, y: State, mode: Row, par: Row) -> Chamber:
@@ -170,17 +173,10 @@ def push(p1: float, p2: float, x: float, par: Row) -> float:
     return pressures - par[at.WEIGHT] + par[at.CONSTANT] + par[at.SPRING_FORCE] + par[at.SPRING_RATE] * x
 
 
-def stored_rate(air: Chamber, port_temp: float, open_side: float) -> float:
-    """Rate of a chamber's internal energy: dU/dt = q_in·cp·T_in - q_out·cp·T - p·dV/dt + Q̇. [W]"""
-    if open_side > 0.5:
-        return 0.0
-    return CP * (air.inflow * port_temp - air.outflow * air.temp) - air.power + air.heat
-
-
 def rates(time: float, y: State, mode: Row, par: Row) -> State:
     """Rates of the six states.
 
-    Each chamber: dm/dt = q_in - q_out and :func:`stored_rate`. Piston: M·dv/dt = D - opposing forces - friction;
+    Each chamber: dm/dt = q_in - q_out and dU/dt, its gain. Piston: M·dv/dt = D - opposing forces - friction;
     at rest (DIRECTION 0, v 0) x and v do not move.
     """
     part = opening(time, mode)
@@ -191,14 +187,7 @@ def rates(time: float, y: State, mode: Row, par: Row) -> State:
     if direction != 0.0:
         against = opposing(mode, par) + rubbing(y[at.V], mode, par)
         acceleration = (push(cap.p, rod.p, y[at.X], par) - direction * against) / par[at.MASS]
-    return (
-        y[at.V],
-        acceleration,
-        cap.inflow - cap.outflow,
-        stored_rate(cap, mode[at.CAP_LINK + at.PORT_T], par[at.VENTED_CAP]),
-        rod.inflow - rod.outflow,
-        stored_rate(rod, mode[at.ROD_LINK + at.PORT_T], par[at.VENTED_ROD]),
-    )
+    return y[at.V], acceleration, cap.inflow - cap.outflow, cap.gain, rod.inflow - rod.outflow, rod.gain
 
 
 def drive(y: State, par: Row) -> float:

@@ -108,12 +108,14 @@ def simulate(
         status = run(1.0, 3.0 * ROUGH, ROUGH, True, True)
         cycles += 1.0
     last = info[at.I_MISMATCH] > 30.0 * ROUGH
-    close, quiet = 3.0 * fine, 1.0
+    # the ledger closes only from a start at its own tolerance; without it the rough cycles lead near enough
+    close, quiet = 3.0 * fine, (1.0 if ledger else 0.0)
     while status == at.DONE and not quick:
         # quiet cycles at the fine tolerance, then one that is reported, until that one repeats; the ledger takes
         # steps of its own, so after a first failure the quiet cycles carry it too
-        status = run(quiet, close, fine, ledger and quiet > 1.0, False)
-        cycles += info[at.I_CYCLES]
+        if quiet > 0.0:
+            status = run(quiet, close, fine, ledger and quiet > 1.0, False)
+            cycles += info[at.I_CYCLES]
         if ledger:
             par[at.LEDGER_SCALE] = _exergy_scale(rows.events, par)
         if status == at.DONE:
@@ -123,7 +125,7 @@ def simulate(
             if last or (repeats and (not ledger or _closes(rows))):
                 break
             close *= 0.3 if repeats else 1.0
-        quiet *= 2.0
+        quiet = max(1.0, 2.0 * quiet)
         last = quiet >= 256.0
     if status != at.DONE:
         return Refusal(

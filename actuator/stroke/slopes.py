@@ -185,31 +185,44 @@ def chamber_change(
     else:
         leaving = air.temp * doutflow + air.part * air.outflow * dtemp
         dheat = (par[at.INDEX] - GAMMA) / _GAMMA_1 * (R_AIR * (air.port_temp * dinflow - leaving) - dpower)
-    return Chamber(dp, dtemp, dinflow, doutflow, dpower, dheat)
-
-
-def energy_change(air: Tangent, change: Chamber) -> float:
-    """Derivative of dU/dt that goes with the change of a chamber. [W]"""
-    carried = air.temp * change.outflow + air.part * air.outflow * change.temp
-    return CP * (air.port_temp * change.inflow - carried) - change.power + change.heat
+    carried = air.temp * doutflow + air.part * air.outflow * dtemp
+    gain = CP * (air.port_temp * dinflow - carried) - dpower + dheat
+    return Chamber(dp, dtemp, dinflow, doutflow, dpower, dheat, gain)
 
 
 def block(air: Tangent, area: float, par: Row) -> Block:
-    """Columns of a chamber's rates, each the change in one direction."""
+    """Derivatives of a chamber's two rates, by its pressure and temperature first; ``area`` is dV/dx. [m²]"""
     if air.wall == 0.0:
         return NO_BLOCK
-    by_x = chamber_change(air, area, 1.0, 0.0, 0.0, 0.0, 0.0, par)
-    by_v = chamber_change(air, area, 0.0, 1.0, 0.0, 0.0, 0.0, par)
-    by_m = chamber_change(air, area, 0.0, 0.0, 1.0, 0.0, 0.0, par)
-    by_u = chamber_change(air, area, 0.0, 0.0, 0.0, 1.0, 0.0, par)
+    into, out_of, out_t, out = (
+        air.part * air.inflow_p,
+        air.part * air.outflow_p,
+        air.part * air.outflow_t,
+        air.part * air.outflow,
+    )
+    by_p = air.port_temp * into - air.temp * out_of
+    by_t = -(air.temp * out_t + out)
+    if par[at.INDEX] == 0.0:
+        power = -1.0
+        energy_p = CP * by_p
+        energy_t = CP * by_t - par[at.HEAT] * air.wall
+        warmed = par[at.HEAT] * math.copysign(math.pi * par[at.BORE], area) * (par[at.T_AMB] - air.temp)
+    else:
+        implied = (par[at.INDEX] - GAMMA) / _GAMMA_1
+        power = -1.0 - implied
+        energy_p = (CP + implied * R_AIR) * by_p
+        energy_t = (CP + implied * R_AIR) * by_t
+        warmed = 0.0
+    mass_p = into - out_of
+    energy_p += power * air.growth
     return Block(
-        by_x.inflow - by_x.outflow,
-        by_m.inflow - by_m.outflow,
-        by_u.inflow - by_u.outflow,
-        energy_change(air, by_x),
-        energy_change(air, by_v),
-        energy_change(air, by_m),
-        energy_change(air, by_u),
+        mass_p * air.p_v * area,
+        -out_t * air.temp_m,
+        mass_p * air.p_u - out_t * air.temp_u,
+        energy_p * air.p_v * area + warmed,
+        power * air.p * area,
+        energy_t * air.temp_m,
+        energy_p * air.p_u + energy_t * air.temp_u,
     )
 
 
@@ -238,9 +251,9 @@ def ramp(cap: Tangent, rod: Tangent, time: float, mode: Row, par: Row) -> State:
         0.0,
         0.0,
         change1.inflow - change1.outflow,
-        energy_change(cap, change1),
+        change1.gain,
         change2.inflow - change2.outflow,
-        energy_change(rod, change2),
+        change2.gain,
     )
 
 

@@ -9,7 +9,7 @@
 enum { END, REVERSAL, EDGE, START, NONE = -1, FAILED = -2 };
 
 typedef struct { double x, v, m1, u1, m2, u2; } State;
-typedef struct { double p, temp, inflow, outflow, power, heat; } Chamber;
+typedef struct { double p, temp, inflow, outflow, power, heat, gain; } Chamber;
 typedef struct {
     double growth, wall, part, p, p_v, p_u, temp, temp_m, temp_u, inflow, outflow, inflow_p, outflow_p, outflow_t,
         port_temp;
@@ -122,13 +122,14 @@ static Chamber chamber(double m, double u, double dead, double volume, double gr
         const double *way = mode + link + OUT_OF;
         outflow = part * passage(p, port, temp, way[0], way[1], way[2]);
     }
-    double power = p * growth;
-    return (Chamber){p, temp, inflow, outflow, power, wall_heat(wall, temp, inflow, port_temp, outflow, power, par)};
+    double power = p * growth, heat = wall_heat(wall, temp, inflow, port_temp, outflow, power, par);
+    double gain = AIR_CP * (inflow * port_temp - outflow * temp) - power + heat;
+    return (Chamber){p, temp, inflow, outflow, power, heat, gain};
 }
 
 static Chamber vented(double growth, const double *par)
 {
-    return (Chamber){par[P_AMB], par[T_AMB], 0.0, 0.0, par[P_AMB] * growth, 0.0};
+    return (Chamber){par[P_AMB], par[T_AMB], 0.0, 0.0, par[P_AMB] * growth, 0.0, 0.0};
 }
 
 static Chamber cap_chamber(double part, State y, const double *mode, const double *par)
@@ -162,12 +163,6 @@ static double push(double p1, double p2, double x, const double *par)
     return pressures - par[WEIGHT] + par[CONSTANT] + par[SPRING_FORCE] + par[SPRING_RATE] * x;
 }
 
-static double stored_rate(Chamber air, double port_temp, double open_side)
-{
-    if (open_side > 0.5) return 0.0;
-    return AIR_CP * (air.inflow * port_temp - air.outflow * air.temp) - air.power + air.heat;
-}
-
 static State rates(double time, State y, const double *mode, const double *par)
 {
     double part = opening(time, mode);
@@ -177,8 +172,7 @@ static State rates(double time, State y, const double *mode, const double *par)
         double against = opposing(mode, par) + rubbing(y.v, mode, par);
         acceleration = (push(cap.p, rod.p, y.x, par) - direction * against) / par[MASS];
     }
-    return (State){y.v, acceleration, cap.inflow - cap.outflow, stored_rate(cap, mode[CAP_LINK + PORT_T], par[VENTED_CAP]),
-                   rod.inflow - rod.outflow, stored_rate(rod, mode[ROD_LINK + PORT_T], par[VENTED_ROD])};
+    return (State){y.v, acceleration, cap.inflow - cap.outflow, cap.gain, rod.inflow - rod.outflow, rod.gain};
 }
 
 static double drive(State y, const double *par)
@@ -254,25 +248,34 @@ static Chamber chamber_change(Tangent air, double area, double dx, double dv, do
         double leaving = air.temp * doutflow + air.part * air.outflow * dtemp;
         dheat = (par[INDEX] - AIR_GAMMA) / (AIR_GAMMA - 1.0) * (AIR_R_AIR * (air.port_temp * dinflow - leaving) - dpower);
     }
-    return (Chamber){dp, dtemp, dinflow, doutflow, dpower, dheat};
-}
-
-static double energy_change(Tangent air, Chamber change)
-{
-    double carried = air.temp * change.outflow + air.part * air.outflow * change.temp;
-    return AIR_CP * (air.port_temp * change.inflow - carried) - change.power + change.heat;
+    double carried = air.temp * doutflow + air.part * air.outflow * dtemp;
+    double gain = AIR_CP * (air.port_temp * dinflow - carried) - dpower + dheat;
+    return (Chamber){dp, dtemp, dinflow, doutflow, dpower, dheat, gain};
 }
 
 static Block block(Tangent air, double area, const double *par)
 {
     if (air.wall == 0.0) return (Block){0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0};
-    Chamber by_x = chamber_change(air, area, 1.0, 0.0, 0.0, 0.0, 0.0, par);
-    Chamber by_v = chamber_change(air, area, 0.0, 1.0, 0.0, 0.0, 0.0, par);
-    Chamber by_m = chamber_change(air, area, 0.0, 0.0, 1.0, 0.0, 0.0, par);
-    Chamber by_u = chamber_change(air, area, 0.0, 0.0, 0.0, 1.0, 0.0, par);
-    return (Block){by_x.inflow - by_x.outflow, by_m.inflow - by_m.outflow, by_u.inflow - by_u.outflow,
-                   energy_change(air, by_x), energy_change(air, by_v), energy_change(air, by_m),
-                   energy_change(air, by_u)};
+    double into = air.part * air.inflow_p, out_of = air.part * air.outflow_p, out_t = air.part * air.outflow_t;
+    double out = air.part * air.outflow, by_p = air.port_temp * into - air.temp * out_of;
+    double by_t = -(air.temp * out_t + out), power, energy_p, energy_t, warmed;
+    if (par[INDEX] == 0.0) {
+        power = -1.0;
+        energy_p = AIR_CP * by_p;
+        energy_t = AIR_CP * by_t - par[HEAT] * air.wall;
+        warmed = par[HEAT] * copysign(M_PI * par[BORE], area) * (par[T_AMB] - air.temp);
+    } else {
+        double implied = (par[INDEX] - AIR_GAMMA) / (AIR_GAMMA - 1.0);
+        power = -1.0 - implied;
+        energy_p = (AIR_CP + implied * AIR_R_AIR) * by_p;
+        energy_t = (AIR_CP + implied * AIR_R_AIR) * by_t;
+        warmed = 0.0;
+    }
+    double mass_p = into - out_of;
+    energy_p += power * air.growth;
+    return (Block){mass_p * air.p_v * area, -out_t * air.temp_m, mass_p * air.p_u - out_t * air.temp_u,
+                   energy_p * air.p_v * area + warmed, power * air.p * area, energy_t * air.temp_m,
+                   energy_p * air.p_u + energy_t * air.temp_u};
 }
 
 static Jacobian jacobian(Tangent cap, Tangent rod, State y, const double *mode, const double *par)
@@ -293,8 +296,8 @@ static State ramp(Tangent cap, Tangent rod, double time, const double *mode, con
     double dpart = 1.0 / mode[OPEN_OVER];
     Chamber change1 = chamber_change(cap, par[AREA_CAP], 0.0, 0.0, 0.0, 0.0, dpart, par);
     Chamber change2 = chamber_change(rod, -par[AREA_ROD], 0.0, 0.0, 0.0, 0.0, dpart, par);
-    return (State){0.0, 0.0, change1.inflow - change1.outflow, energy_change(cap, change1),
-                   change2.inflow - change2.outflow, energy_change(rod, change2)};
+    return (State){0.0, 0.0, change1.inflow - change1.outflow, change1.gain, change2.inflow - change2.outflow,
+                   change2.gain};
 }
 
 static Slopes slopes_at(double time, State y, const double *mode, const double *par)
@@ -565,7 +568,9 @@ static Found event_of_motion(State y, State k, State end_y, State end_k, double 
     double direction = mode[DIRECTION];
     if (y.v == 0.0 && direction * end_y.v <= 0.0) return (Found){FAILED, 0.0, 0.0};
     double end = direction > 0.0 ? par[STROKE] : 0.0, edge = next_edge(y.x, mode, par, n_edges, edges);
+    double nearer = direction > 0.0 ? smaller(edge, end) : larger(edge, end);
     Found found = {NONE, 0.0, taken};
+    if (direction * (end_y.x - nearer) < 0.0 && 0.0 < direction * end_y.v) return found;
     for (int kind = 0; kind < 3; kind++) {
         double goal = kind == EDGE ? edge : end, after = event_value(kind, end_y, mode, par, goal);
         if (after >= 0.0) {
