@@ -7,12 +7,12 @@ from dataclasses import dataclass, replace
 
 from actuator.analysis import never, varied_result
 from actuator.answer import Answer
-from actuator.parts import Actuator, Machine
+from actuator.parts import Actuator, Machine, Spread
 from actuator.report.figures import FIGURES, At, Figure
 from actuator.results import Analysis
 from actuator.scatter.bands import Bands, banded
 from actuator.scatter.outcome import Evaluate, Outcome, StopFlag, no_stop
-from actuator.scatter.points import SAMPLES
+from actuator.scatter.points import SAMPLES, deviations
 from actuator.scatter.sensitivity import Step, sensitivity
 from actuator.stroke.compiled import engine as pick_engine
 from actuator.stroke.compiled import prepare
@@ -235,3 +235,8 @@ def sensitivity_of(
     stop = no_stop()
     evaluate = evaluator(analysis, machine, actuator, ledger=ledger, compiled=_compiled(False), stop=stop)
     return sensitivity(part, supplied, analysis.project.site, evaluate, figure, cancelled=cancelled, stop=stop)
+
+
+def warm_up() -> None:
+    """Import what bands need, which takes a second, before anyone waits for them."""
+    deviations(Spread(), 1)

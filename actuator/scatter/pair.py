@@ -111,7 +111,9 @@ def worst_pair(actuator: Actuator, machine: Machine, site: Site, simulate: Simul
     Notes
     -----
     The corners follow a rule, all but the mass. A stroke that swings against the air in front of the piston can be
-    some percent harder at a lower pressure or with more friction, where that catches the swing at its fastest.
+    some percent harder at a lower pressure or with more friction, where that catches the swing at its fastest; one
+    whose exhaust is throttled hard, or whose cycle is too short to fill the chambers, can be some percent slower at a
+    higher pressure.
     """
     known: dict[Deviation, _Corner] = {}
 

@@ -5,6 +5,8 @@ from __future__ import annotations
 import csv
 import io
 import json
+import subprocess
+import sys
 from collections.abc import Iterator
 
 import pytest
@@ -196,3 +198,10 @@ def test_a_document_with_problems_has_no_bands() -> None:
     broken = work_out(demo().edited("machine.1.actuator.1.bore", "fifty mm"))
     with pytest.raises(LookupError, match="the document has problems"):
         bands_of(broken, 0, 0)
+
+
+def test_what_bands_need_can_be_imported_before() -> None:
+    code = "import sys\nfrom actuator.report.scatter import warm_up\nprint('scipy.stats' in sys.modules)\nwarm_up()\n"
+    code += "print('scipy.stats' in sys.modules)"
+    done = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True)
+    assert done.stdout.split() == ["False", "True"]
