@@ -130,3 +130,14 @@ def field(app: Design, path: str) -> Field:
     """The field of a path."""
     found = app.desk.query_one("#sheet").query(Field)
     return next(item for item in found if item.spec.path == path)
+
+
+def shows(app: Design, *texts: str) -> bool:
+    """Whether all texts are on the screen."""
+    everything = "\n".join(seen(app))
+    return all(text in everything for text in texts)
+
+
+def at_desk(app: Design) -> bool:
+    """Whether no window stands over the desk."""
+    return app.screen is app.desk
