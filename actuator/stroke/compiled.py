@@ -1,59 +1,32 @@
-"""The kernel's source, run as it stands or compiled by numba; compiling never makes anyone wait.
-
-The functions of the kernel's modules are rebound, name by name, to their jitted twins. numba's own cache looks
-at one file only, so its folder is named by a hash over every source file that is bound here.
-"""
+"""Which kernel runs, interpreted or compiled, and how the compiled one comes without making anyone wait."""
 
 from __future__ import annotations
 
 import contextlib
-import hashlib
-import importlib.metadata
+import gc
 import importlib.util
 import os
 import subprocess
 import sys
-import tempfile
 import threading
 import time
-import types
-from collections.abc import Callable
+from collections.abc import Iterator
+from contextlib import contextmanager
 from dataclasses import dataclass
 from pathlib import Path
-from typing import Any, Literal
+from typing import Literal
 
-import platformdirs
-
-from actuator.flow import scalar
-from actuator.mechanics import friction
-from actuator.stroke import (
-    advance,
-    batch,
-    cycle,
-    dopri,
-    equations,
-    events,
-    layout,
-    ledger,
-    rodas,
-    slopes,
-    states,
-    steppers,
-)
+from actuator.stroke.batch import batch
+from actuator.stroke.jit import Kernel, bind, cache_folder, ready_mark
 
 Engine = Literal["auto", "compiled", "interpreted"]
 
-_INLINED = (scalar, friction, states, equations, slopes)
-_MODULES = (*_INLINED, layout, dopri, rodas, steppers, ledger, events, advance, cycle, batch)
 PATIENCE = 6
 """Strokes that a process computes interpreted before it begins to load the compiled kernel: loading costs more. [1]"""
 PATIENT_FOR = 180.0
 """Time after which a process that began to compile is taken for dead. [s]"""
 OFF = "ACTUATOR_INTERPRETED"
 """Environment variable: set to anything, the kernel runs interpreted and is never compiled."""
-
-Kernel = Callable[..., float]
-"""The entry, interpreted or compiled."""
 
 
 @dataclass(slots=True)
@@ -71,47 +44,6 @@ _state = _State()
 _lock = threading.Lock()
 
 
-def source_hash() -> str:
-    """Name of the cache folder: hash over the bound sources and the versions of numba, llvmlite and numpy."""
-    digest = hashlib.sha256()
-    for module in (*_MODULES, sys.modules["actuator.air.gas"], sys.modules[__name__]):
-        assert module.__file__ is not None
-        digest.update(Path(module.__file__).read_bytes())
-    assert batch.__file__ is not None
-    digest.update(str(Path(batch.__file__).stat().st_mtime_ns).encode())  # numba's own stamp of the entry's file
-    for package in ("numba", "llvmlite", "numpy"):
-        try:
-            digest.update(importlib.metadata.version(package).encode())
-        except importlib.metadata.PackageNotFoundError:
-            digest.update(b"none")
-    digest.update(sys.version.encode())
-    return digest.hexdigest()[:20]
-
-
-def cache_folder() -> Path | None:
-    """Folder for the compiled kernel that can be written, the user's cache or a temporary one, else None."""
-    name = f"kernel-{source_hash()}"
-    candidates = (
-        Path(platformdirs.user_cache_dir("pneumatic-actuator-design", appauthor=False)),
-        Path(tempfile.gettempdir()) / f"pneumatic-actuator-design-{os.getuid() if hasattr(os, 'getuid') else 0}",
-    )
-    for parent in candidates:
-        try:
-            folder = parent / name
-            folder.mkdir(parents=True, exist_ok=True, mode=0o700)
-            probe = folder / f".probe-{os.getpid()}-{threading.get_ident()}"
-            probe.touch()
-            probe.unlink()
-        except OSError:
-            continue
-        return folder
-    return None
-
-
-def _ready_mark(folder: Path) -> Path:
-    return folder / "ready"
-
-
 def _claim(folder: Path) -> bool:
     """Whether no other process fills this cache: the first one leaves a mark, which lapses after ``PATIENT_FOR``."""
     mark = folder / "claimed"
@@ -125,75 +57,27 @@ def _claim(folder: Path) -> bool:
     return True
 
 
-def _options(function: types.FunctionType, cached: bool) -> dict[str, Any]:
-    """Options for numba of one function.
+@contextmanager
+def _no_collecting() -> Iterator[None]:
+    """Keep the garbage collector from the thousands of objects that come with numba, which are there to stay.
 
-    The kernel neither makes nor keeps an array, so arrays need no counting of references (``_nrt``), which would
-    cost as much as the equations. The equations are inlined where they are used, except ``rates``, used a dozen
-    times. Only the entry is called from Python and has a cache.
+    It would walk over all of them again and again, up to 0.1 s at a time in which no other thread runs, also later.
     """
-    entry = function is batch.batch
-    return {
-        "nogil": True,
-        "error_model": "numpy",
-        "forceinline": sys.modules[function.__module__] in _INLINED and function is not equations.rates,
-        "_nrt": False,
-        "no_cpython_wrapper": not entry,
-        "no_cfunc_wrapper": True,
-        "cache": entry and cached,
-    }
-
-
-def bind() -> Kernel:
-    """Jitted twin of ``batch.batch``, from the cache where it is warm; compiles where it is not.
-
-    Returns
-    -------
-    callable
-        Same arguments as the interpreted twin, rows as float64 arrays.
-    """
-    import numba
-
-    folder = cache_folder()
-    if folder is not None:
-        setattr(numba.config, "CACHE_DIR", str(folder))  # noqa: B010
-    # A name bound in several modules is one function: jit each once, then let every copy see the twins.
-    functions: dict[str, types.FunctionType] = {}
-    for module in _MODULES:
-        functions |= {
-            name: value
-            for name, value in vars(module).items()
-            if isinstance(value, types.FunctionType) and value.__module__ == module.__name__
-        }
-    namespaces: dict[str, dict[str, Any]] = {module.__name__: dict(vars(module)) for module in _MODULES}
-    row = numba.types.Array(numba.float64, 1, "C")
-    flags = numba.types.Array(numba.uint8, 1, "C")
-    number = numba.float64
-    table = numba.types.Array(numba.float64, 2, "C")
-    signature = number(*([number] * 4), numba.boolean, row, *([table] * 8), row, row, table, flags)
-    twins: dict[str, Any] = {}
-    for name, function in functions.items():
-        copy = types.FunctionType(
-            function.__code__, namespaces[function.__module__], function.__name__, function.__defaults__
-        )
-        copy.__module__ = function.__module__
-        copy.__qualname__ = function.__qualname__
-        twins[name] = numba.njit(**_options(function, cached=folder is not None))(copy)
-    for namespace in namespaces.values():
-        namespace.update((name, twin) for name, twin in twins.items() if name in namespace)
-    entry = twins["batch"]
-    entry.compile(signature)
-    entry.disable_compile()
-    if folder is not None:
-        _ready_mark(folder).touch()
-    compiled: Kernel = entry
-    return compiled
+    was_on = gc.isenabled()
+    gc.disable()
+    try:
+        yield
+    finally:
+        gc.freeze()
+        if was_on:
+            gc.enable()
 
 
 def _load() -> None:
     """Bind in this process and publish the result; runs in a thread."""
     try:
-        kernel = bind()
+        with _no_collecting():
+            kernel = bind()
     except Exception as fault:  # numba may fail in many ways; the interpreted kernel answers all the same
         with _lock:
             _state.remark = f"not compiled ({type(fault).__name__}: {fault}); computed interpreted"
@@ -206,7 +90,7 @@ def _compile_in_child() -> subprocess.Popen[bytes] | None:
     """Start a process that fills the cache folder."""
     try:
         return subprocess.Popen(
-            [sys.executable, "-c", "from actuator.stroke.compiled import bind; bind()"],
+            [sys.executable, "-c", "from actuator.stroke.jit import bind; bind()"],
             stdin=subprocess.DEVNULL,
             stdout=subprocess.DEVNULL,
             stderr=subprocess.DEVNULL,
@@ -231,8 +115,11 @@ def prepare(wait: bool = False) -> None:
                 _state.remark = "numba is not installed; computed interpreted"
                 return
             folder = cache_folder()
-            warm = folder is not None and _ready_mark(folder).exists()
-            if not warm and not wait and folder is not None:
+            if folder is None and not wait:
+                _state.remark = "no folder for the compiled kernel can be written; computed interpreted"
+                return
+            warm = folder is not None and ready_mark(folder).exists()
+            if folder is not None and not warm and not wait:
                 if _state.child is None:
                     if _claim(folder):
                         _state.child = _compile_in_child()
@@ -260,7 +147,7 @@ def expect(strokes: int) -> None:
     if strokes <= PATIENCE:
         return
     folder = cache_folder()
-    prepare(wait=folder is not None and _ready_mark(folder).exists())
+    prepare(wait=folder is not None and ready_mark(folder).exists())
 
 
 def engine(wanted: Engine = "auto") -> tuple[Kernel, bool]:
@@ -283,7 +170,7 @@ def engine(wanted: Engine = "auto") -> tuple[Kernel, bool]:
         If ``"compiled"`` is wanted and cannot be had.
     """
     if wanted == "interpreted" or (wanted == "auto" and os.environ.get(OFF)):
-        return batch.batch, False
+        return batch, False
     with _lock:
         _state.asked += 1
         patient = _state.asked <= PATIENCE
@@ -294,7 +181,7 @@ def engine(wanted: Engine = "auto") -> tuple[Kernel, bool]:
             return _state.kernel, True
         if wanted == "compiled":
             raise RuntimeError(_state.remark or "the compiled kernel is switched off")
-    return batch.batch, False
+    return batch, False
 
 
 def loaded() -> bool:
