@@ -117,13 +117,13 @@ def chamber(
     outflow = 0.0
     if port > p:
         place = link + at.INTO
-        inflow = part * passage(port, p, port_temp, mode[place], mode[place + 1], mode[place + 2])
+        inflow = passage(port, p, port_temp, part * mode[place], mode[place + 1], mode[place + 2])
     else:
         place = link + at.OUT_OF
-        outflow = part * passage(p, port, temp, mode[place], mode[place + 1], mode[place + 2])
+        outflow = passage(p, port, temp, part * mode[place], mode[place + 1], mode[place + 2])
     power = p * growth
     heat = wall_heat(par[at.HEAT], par[at.INDEX], wall, par[at.T_AMB], temp, inflow, port_temp, outflow, power)
-    gain = CP * (inflow * port_temp - outflow * temp) - power + heat
+    gain = CP * port_temp * inflow - CP * temp * outflow + (heat - power)
     return Chamber(p, temp, inflow, outflow, power, heat, gain)
 
 

@@ -117,13 +117,13 @@ static Chamber chamber(double m, double u, double dead, double volume, double gr
     double port = mode[link + PORT_P], port_temp = mode[link + PORT_T], inflow = 0.0, outflow = 0.0;
     if (port > p) {
         const double *way = mode + link + INTO;
-        inflow = part * passage(port, p, port_temp, way[0], way[1], way[2]);
+        inflow = passage(port, p, port_temp, part * way[0], way[1], way[2]);
     } else {
         const double *way = mode + link + OUT_OF;
-        outflow = part * passage(p, port, temp, way[0], way[1], way[2]);
+        outflow = passage(p, port, temp, part * way[0], way[1], way[2]);
     }
     double power = p * growth, heat = wall_heat(wall, temp, inflow, port_temp, outflow, power, par);
-    double gain = AIR_CP * (inflow * port_temp - outflow * temp) - power + heat;
+    double gain = AIR_CP * port_temp * inflow - AIR_CP * temp * outflow + (heat - power);
     return (Chamber){p, temp, inflow, outflow, power, heat, gain};
 }
 
