@@ -78,6 +78,7 @@ def single(out: Print, equal: float) -> None:
             "yardstick": lambda: half_stroke(case, YARD),
             "periodic": lambda: simulate(part, machine, site, ledger=False, rtol=equal, engine="compiled"),
             "ledger": lambda: simulate(part, machine, site, engine="compiled"),
+            "plain": lambda: simulate(part, machine, site, engine="interpreted"),
             "one": both,
             "slow": _interpreted(both),
             "twenty": edits(20),
@@ -90,6 +91,7 @@ def single(out: Print, equal: float) -> None:
     _row(out, "periodic state with histories / yardstick", times["periodic"], times["periodic"] / yard, "at most 1")
     _row(out, "the same with the ledger at its own tolerance / yardstick", times["ledger"], times["ledger"] / yard, "")
     _row(out, "work_out, one actuator, all edited / yardstick", times["one"], times["one"] / yard, "at most 3")
+    _row(out, "periodic state with the ledger, interpreted / yardstick", times["plain"], times["plain"] / yard, "")
     _row(out, "work_out, interpreted / yardstick", times["slow"], times["slow"] / yard, "at most 40")
     _row(out, "work_out, 20 actuators / one", times["twenty"], times["twenty"] / times["one"], "at most 14")
 
